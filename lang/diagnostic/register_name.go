@@ -1,0 +1,3 @@
+package diagnostic
+
+func nameEntries() []Entry { return nil }
