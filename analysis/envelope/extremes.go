@@ -1,0 +1,83 @@
+package envelope
+
+import "math"
+
+// equal is the relative difference below which two values count as equal.
+const equal = 1e-12
+
+// above says that value is truly larger than best.
+func above(value, best float64) bool {
+	return math.IsInf(best, -1) || value-best > equal*math.Abs(best)
+}
+
+// Extremes returns the largest and the smallest value of the quantity over all
+// sums and the whole length. Without sums both have Sum −1.
+func (p *Path) Extremes(sums []Sum) (most, least Peak) {
+	if len(sums) == 0 {
+		return nothing(), nothing()
+	}
+	if p.degree < 0 {
+		return Peak{}, Peak{}
+	}
+	most, least = Peak{Value: math.Inf(-1)}, Peak{Value: math.Inf(1)}
+	for i, sum := range sums {
+		see := func(value, at float64) {
+			if above(value, most.Value) {
+				most = Peak{value, at, i}
+			}
+			if above(-value, -least.Value) {
+				least = Peak{value, at, i}
+			}
+		}
+		for piece := range len(p.Breaks) - 1 {
+			from, length := p.Breaks[piece], p.Breaks[piece+1]-p.Breaks[piece]
+			c := p.controls(piece, sum)
+			see(c[0], from)
+			inside := false
+			for k := 1; k < p.degree; k++ {
+				inside = inside || above(c[k], most.Value) || above(-c[k], -least.Value)
+			}
+			if inside {
+				course := p.course(piece, sum)
+				for _, s := range course.Derivative().Roots(length) {
+					see(course.At(s), from+s)
+				}
+			}
+			see(c[p.degree], from+length)
+		}
+	}
+	return most, least
+}
+
+// search finds the largest value that a measure takes in one sum along the
+// whole length. It may stop and report false as soon as it knows that the value
+// does not exceed floor.
+type search func(sum Sum, floor float64) (value, at float64, exceeds bool)
+
+// rank returns the sums with the largest values, at most count, largest first.
+func rank(sums []Sum, count int, largest search) []Peak {
+	var best []Peak
+	for i, sum := range sums {
+		floor := math.Inf(-1)
+		if len(best) == count {
+			floor = best[count-1].Value
+		}
+		value, at, exceeds := largest(sum, floor)
+		if !exceeds {
+			continue
+		}
+		place := len(best)
+		for place > 0 && above(value, best[place-1].Value) {
+			place--
+		}
+		if place == count {
+			continue
+		}
+		if len(best) < count {
+			best = append(best, Peak{})
+		}
+		copy(best[place+1:], best[place:])
+		best[place] = Peak{value, at, i}
+	}
+	return best
+}

@@ -1,0 +1,111 @@
+package envelope
+
+import (
+	"math"
+
+	"spanwright/analysis/element"
+)
+
+// LargestOffset returns the sums in which c + √(a² + b²) is largest, at most
+// count of them, largest first: the normal stress of a round section, c from
+// the axial force, a and b from the two moments.
+func LargestOffset(sums []Sum, count int, c, a, b *Path) []Peak {
+	switch {
+	case b.Zero():
+		return largestOfTwo(sums, count, c, a)
+	case a.Zero():
+		return largestOfTwo(sums, count, c, b)
+	}
+	return rank(sums, count, func(sum Sum, floor float64) (float64, float64, bool) {
+		return largestOffset(sum, floor, [3]*Path{c, a, b})
+	})
+}
+
+// largestOfTwo ranks by c + |a|, the larger of c + a and c − a.
+func largestOfTwo(sums []Sum, count int, c, a *Path) []Peak {
+	plus, minus := Blend([]float64{1, 1}, c, a), Blend([]float64{1, -1}, c, a)
+	return rank(sums, count, func(sum Sum, floor float64) (float64, float64, bool) {
+		v, at, ok := plus.largestSigned(sum, floor, 1)
+		if ok {
+			floor = v
+		}
+		if w, atW, better := minus.largestSigned(sum, floor, 1); better && (!ok || above(w, v)) {
+			return w, atW, true
+		}
+		return v, at, ok
+	})
+}
+
+// stretch is a part of a piece with the Bernstein coefficients of c, a and b
+// over it.
+type stretch struct {
+	from, to float64
+	controls [3]element.Polynomial
+}
+
+// bound is never below the value on the stretch: the size of a vector is convex.
+func (s *stretch) bound(degree int) float64 {
+	bound := math.Inf(-1)
+	for k := 0; k <= degree; k++ {
+		bound = math.Max(bound, s.value(k))
+	}
+	return bound
+}
+
+// value is that of the coefficients k; at 0 and the degree that of the ends.
+func (s *stretch) value(k int) float64 {
+	return s.controls[0][k] + math.Hypot(s.controls[1][k], s.controls[2][k])
+}
+
+// halves splits the stretch in the middle, by de Casteljau's construction.
+func (s *stretch) halves(degree int) (left, right stretch) {
+	middle := s.from + (s.to-s.from)/2
+	left, right = stretch{from: s.from, to: middle}, stretch{from: middle, to: s.to}
+	for i, c := range s.controls {
+		for k := 0; k <= degree; k++ {
+			left.controls[i][k] = c[0]
+			right.controls[i][degree-k] = c[degree-k]
+			for j := 0; j < degree-k; j++ {
+				c[j] = (c[j] + c[j+1]) / 2
+			}
+		}
+	}
+	return left, right
+}
+
+// largestOffset halves what could still hold a larger value, until no more than
+// rounding is left. The axial force may change along the piece, so that no
+// polynomial has the stationary places as its roots.
+func largestOffset(sum Sum, floor float64, paths [3]*Path) (value, at float64, exceeds bool) {
+	degree := 0
+	for _, p := range paths {
+		degree = max(degree, p.degree)
+	}
+	var found best
+	breaks := paths[0].Breaks
+	for piece := range len(breaks) - 1 {
+		whole := stretch{from: breaks[piece], to: breaks[piece+1]}
+		for i, p := range paths {
+			whole.controls[i] = p.raised(piece, sum, degree)
+		}
+		open := []stretch{whole}
+		for len(open) > 0 {
+			s := open[len(open)-1]
+			open = open[:len(open)-1]
+			if found.reached(s.bound(degree), floor) {
+				continue
+			}
+			found.see(s.value(0), s.from)
+			found.see(s.value(degree), s.to)
+			if s.to-s.from < 1e-9*(whole.to-whole.from) {
+				continue
+			}
+			left, right := s.halves(degree)
+			if left.bound(degree) > right.bound(degree) {
+				left, right = right, left
+			}
+			open = append(open, left, right)
+		}
+	}
+	return found.value, found.at, found.seen && above(found.value, floor)
+}
