@@ -79,14 +79,17 @@ func (p *Path) largestSigned(sum Sum, floor, sign float64) (value, at float64, e
 
 func (p *Path) largestSize(sum Sum, floor float64) (value, at float64, exceeds bool) {
 	up, atUp, upExceeds := p.largestSigned(sum, floor, 1)
-	if upExceeds {
-		floor = up
-	}
 	down, atDown, downExceeds := p.largestSigned(sum, floor, -1)
-	if downExceeds && (!upExceeds || above(down, up)) {
+	if downExceeds && (!upExceeds || further(down, atDown, up, atUp)) {
 		return down, atDown, true
 	}
 	return up, atUp, upExceeds
+}
+
+// further says that a value goes before another of the same sum: it is larger,
+// or equal and nearer to the first end.
+func further(value, at, than, thanAt float64) bool {
+	return above(value, than) || !above(than, value) && at < thanAt
 }
 
 // largestNorm searches √(a² + b²): its stationary places are the roots of
