@@ -65,8 +65,8 @@ type RuleError struct {
 // Error names what the code does not have and what there is.
 func (e *RuleError) Error() string { return e.Reason }
 
-// chosen reads the rule of a family: words separated by commas, in any case of
-// letters. An empty rule chooses nothing.
+// chosen reads the rule of a family: words separated by commas. An empty rule
+// chooses nothing.
 func (c *code) chosen(family *model.Family) (options, *RuleError) {
 	words := options{}
 	groups := map[string]string{}
@@ -88,13 +88,22 @@ func (c *code) chosen(family *model.Family) (options, *RuleError) {
 	return words, nil
 }
 
+// option finds an option whose word differs by no more than case, blanks,
+// hyphens and the name of the code.
 func (c *code) option(word string) (Option, bool) {
 	for _, o := range c.options {
-		if strings.EqualFold(o.Word, word) {
+		if bare := c.bare(word); bare == c.bare(o.Word) {
 			return o, true
 		}
 	}
 	return Option{}, false
+}
+
+func (c *code) bare(word string) string {
+	squeeze := strings.NewReplacer(" ", "", "-", "", "_", "")
+	whole := squeeze.Replace(strings.ToLower(word))
+	publisher, _, _ := strings.Cut(strings.ToLower(c.name), " ")
+	return strings.TrimPrefix(whole, publisher)
 }
 
 func (c *code) optionWords() string {

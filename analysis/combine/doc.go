@@ -25,7 +25,7 @@
 //     1990, table A1.2(B), note 3): where a code has an unfavourable and a
 //     favourable factor, each permanent case takes either, in all mixtures. So
 //     what comes from one source belongs in one case. The family option
-//     "one source" gives all permanent cases the same factor instead.
+//     rule one-source gives all permanent cases the same factor instead.
 //   - Cases of one kind (imposed: one kind and category) are parts of one
 //     action, as pattern loads are: any of them act, all with the same rank,
 //     leading or accompanying (EN 1991-1-1, 3.3.1(2) and 6.2.1(1)). Cases that

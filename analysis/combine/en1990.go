@@ -9,10 +9,10 @@ const (
 	ruleStrength  = "STR"
 	ruleBalance   = "EQU"
 	ruleGround    = "GEO"
-	ruleHighSnow  = "high snow"
-	ruleLowSnow   = "low snow"
-	ruleOneSource = "one source"
-	ruleEachCase  = "each case"
+	ruleHighSnow  = "high-snow"
+	ruleLowSnow   = "low-snow"
+	ruleOneSource = "one-source"
+	ruleEachCase  = "each-case"
 )
 
 // en1990 is EN 1990:2002 with amendment A1:2005, buildings (annex A1), with

@@ -48,4 +48,9 @@ type Under struct {
 	Cases        []int
 	Combinations []int
 	Families     []int
+	// Generated are full names of single combinations that a family's code asks
+	// for ("ULS.S_W"). The text cannot know which there are; analysis finds
+	// them, in any spelling of analysis/combine, and reports those it does not
+	// find.
+	Generated []string
 }
