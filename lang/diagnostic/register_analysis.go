@@ -2,18 +2,18 @@ package diagnostic
 
 // The names of what analysis has to say.
 const (
-	Mechanism          Name = "mechanism"
-	SoftStructure      Name = "soft-structure"
-	IllConditioned     Name = "ill-conditioned"
-	LostDigits         Name = "lost-digits"
-	NoEquilibrium      Name = "no-equilibrium"
-	OneWayCycling      Name = "one-way-cycling"
-	CannotSolve        Name = "cannot-solve"
-	TooManyCombination Name = "too-many-combinations"
-	UnknownRule        Name = "unknown-rule"
-	UnknownCombination Name = "unknown-combination"
-	LimitExceeded      Name = "limit-exceeded"
-	LimitUnanswered    Name = "limit-unanswered"
+	Mechanism           Name = "mechanism"
+	SoftStructure       Name = "soft-structure"
+	IllConditioned      Name = "ill-conditioned"
+	LostDigits          Name = "lost-digits"
+	NoEquilibrium       Name = "no-equilibrium"
+	OneWayCycling       Name = "one-way-cycling"
+	CannotSolve         Name = "cannot-solve"
+	TooManyCombinations Name = "too-many-combinations"
+	UnknownRule         Name = "unknown-rule"
+	UnknownCombination  Name = "unknown-combination"
+	LimitExceeded       Name = "limit-exceeded"
+	LimitUnanswered     Name = "limit-unanswered"
 )
 
 func analysisEntries() []Entry {
@@ -61,7 +61,7 @@ func analysisEntries() []Entry {
 			Mend:        "Do what the message says: here give the section its Iy.",
 		},
 		{
-			Name: TooManyCombination, Severity: Error, Title: "A family asks for too many combinations",
+			Name: TooManyCombinations, Severity: Error, Title: "A family asks for too many combinations",
 			Explanation: "Every mixture of favourable and unfavourable, leading and accompanying cases is a combination. Their number grows steeply with the number of cases. Beyond the bound none of them is formed.",
 			Example:     "family ULS by EN1990 strength    # of twelve permanent and ten imposed cases",
 			Mend:        "Join permanent cases that come from one source into one case, or write \"rule one-source\" after the family; declare with alternate which cases never act together.",
