@@ -16,9 +16,10 @@ import (
 // for colour-blind eyes, readable on light and dark ground.
 const (
 	pictureWidth  = vg.Length(400)
-	panelHeight   = vg.Length(112)
+	panelHeight   = vg.Length(124)
 	margin        = vg.Length(34) // left and right, for the names of nodes
-	room          = vg.Length(24) // above and below the drawing, for labels
+	roomAbove     = vg.Length(36) // above the drawing, for its heading and a label
+	roomBelow     = vg.Length(18) // below it, for a label
 	textSize      = vg.Length(10)
 	samplesOfStep = 32
 )
@@ -98,7 +99,7 @@ func frameOf(c *Course, foot vg.Length) frame {
 	if c.Flipped {
 		above, below, upward = below, above, -1
 	}
-	low, high := foot+room-8, foot+panelHeight-room
+	low, high := foot+roomBelow, foot+panelHeight-roomAbove
 	f.axis = (low + high) / 2
 	if total := above + below; total > 0 {
 		f.axis = low + (high-low)*vg.Length(below/total)
