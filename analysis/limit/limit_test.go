@@ -28,18 +28,14 @@ func (f *fixed) Reaction(node, freedom int) []float64 { return f.reactions[[2]in
 // member makes quantities along a member of 4 m from polynomials by component
 // and state; what is not given is zero in all states.
 func member(states int, given map[element.Component][]element.Polynomial) *envelope.Member {
-	m := &envelope.Member{BentKnown: true}
-	for c := range m.Paths {
-		courses := make([][]element.Polynomial, states)
-		for s := range courses {
-			courses[s] = []element.Polynomial{{}}
-			if of := given[element.Component(c)]; of != nil {
-				courses[s][0] = of[s]
-			}
+	pieces := make([][]element.Piece, states)
+	for s := range pieces {
+		pieces[s] = []element.Piece{{From: 0, To: 4}}
+		for c, of := range given {
+			pieces[s][0].Courses[c] = of[s]
 		}
-		m.Paths[c] = envelope.NewPath([]float64{0, 4}, courses)
 	}
-	return m
+	return envelope.NewMember(pieces, true)
 }
 
 // girder has G and W as states: moments of a 4 m simple beam under 3 kN/m and
