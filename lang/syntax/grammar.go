@@ -139,10 +139,10 @@ type MemberOption struct {
 	Axis  *Name       `parser:"  @@?"`
 	Rate  *Expression `parser:"  @@"`
 	Word  *Name       `parser:"| @@"`
-	Only  bool        `parser:"  ( @'only'"`                    // tension only
-	Whom  []*Name     `parser:"  | ((?! ('at' | 'only')) @@)*"` // My Mz; the node of an offset
-	At    *Name       `parser:"    ('at' @@)?"`                 // the node
-	Value *Expression `parser:"    @@? ) )"`                    // a stiffness, an angle, a vector
+	Only  bool        `parser:"  @'only'?"`        // tension only
+	Whom  []*Name     `parser:"  ((?! 'at') @@)*"` // My Mz; the node of an offset
+	At    *Name       `parser:"  ('at' @@)?"`      // the node
+	Value *Expression `parser:"  @@? )"`           // a stiffness, an angle, a vector
 }
 
 // SupportStatement is: support NODE pinned, options.
