@@ -22,6 +22,7 @@ require (
 	github.com/jotaen/kong-completion v0.0.4 // indirect
 	github.com/mattn/go-colorable v0.1.14 // indirect
 	github.com/mattn/go-isatty v0.0.24 // indirect
+	github.com/mattn/go-runewidth v0.0.16 // indirect
 	github.com/mitchellh/colorstring v0.0.0-20190213212951-d06e56a500db // indirect
 	github.com/owenrumney/go-sarif/v3 v3.3.1 // indirect
 	github.com/pkg/errors v0.9.1 // indirect
