@@ -414,3 +414,13 @@ func TestWhatACodeDoesNotHaveIsRefused(t *testing.T) {
 	assert.Contains(t, problems[3].Error(), "exclude each other")
 	assert.NotEmpty(t, set.Families[4])
 }
+
+func TestNearNamesAreProposed(t *testing.T) {
+	m := cased(t, "G permanent", "Snow snow", "Wind wind")
+	family(m, "ULS", model.EN1990, model.Strength, "")
+	family(m, "SLS", model.EN1990, model.Characteristic, "")
+	set, _ := Expand(m)
+	assert.Equal(t, []string{"ULS.Snow_Wind"}, set.Near("ULS.Snw+wind", 1))
+	assert.Empty(t, set.Near("ULS.quake", 3))
+	assert.Empty(t, set.Near("Snow", 3))
+}

@@ -6,6 +6,8 @@ import (
 	"slices"
 	"strings"
 
+	"github.com/agnivade/levenshtein"
+
 	"spanwright/lang/model"
 	"spanwright/lang/quantity"
 )
@@ -210,4 +212,34 @@ func Spelling(name string) string {
 // highSnow picks its row for snow above 1000 m.
 func PsiOf(a Action, highSnow bool) Psi {
 	return en1990Psi(a, options{ruleHighSnow: highSnow})
+}
+
+// Near returns the spellings of at most count combinations whose names are
+// closest to a name that does not exist, the closest first. Names of other
+// families, and names that differ in more than half of their letters, are not
+// proposed.
+func (s *Set) Near(name string, count int) []string {
+	wanted := Spelling(name)
+	family, _, _ := strings.Cut(wanted, ".")
+	type candidate struct {
+		spelling string
+		distance int
+	}
+	var near []candidate
+	for i := range s.All {
+		spelling := Spelling(s.All[i].Name)
+		if of, _, _ := strings.Cut(spelling, "."); of != family {
+			continue
+		}
+		distance := levenshtein.ComputeDistance(strings.ToLower(wanted), strings.ToLower(spelling))
+		if own := max(len(spelling)-len(family)-1, 1); distance <= max(own/2, 1) {
+			near = append(near, candidate{spelling, distance})
+		}
+	}
+	slices.SortStableFunc(near, func(a, b candidate) int { return a.distance - b.distance })
+	var names []string
+	for _, c := range near[:min(count, len(near))] {
+		names = append(names, c.spelling)
+	}
+	return names
 }
