@@ -5,8 +5,8 @@ import "math"
 // equal is the relative difference below which two values count as equal.
 const equal = 1e-12
 
-// above says that value is truly larger than best.
-func above(value, best float64) bool {
+// Above says that value is larger than best by more than rounding.
+func Above(value, best float64) bool {
 	return math.IsInf(best, -1) || value-best > equal*math.Abs(best)
 }
 
@@ -22,10 +22,10 @@ func (p *Path) Extremes(sums []Sum) (most, least Peak) {
 	most, least = Peak{Value: math.Inf(-1)}, Peak{Value: math.Inf(1)}
 	for i, sum := range sums {
 		see := func(value, at float64) {
-			if above(value, most.Value) {
+			if Above(value, most.Value) {
 				most = Peak{value, at, i}
 			}
-			if above(-value, -least.Value) {
+			if Above(-value, -least.Value) {
 				least = Peak{value, at, i}
 			}
 		}
@@ -35,7 +35,7 @@ func (p *Path) Extremes(sums []Sum) (most, least Peak) {
 			see(c[0], from)
 			inside := false
 			for k := 1; k < p.degree; k++ {
-				inside = inside || above(c[k], most.Value) || above(-c[k], -least.Value)
+				inside = inside || Above(c[k], most.Value) || Above(-c[k], -least.Value)
 			}
 			if inside {
 				course := p.course(piece, sum)
@@ -67,7 +67,7 @@ func rank(sums []Sum, count int, largest search) []Peak {
 			continue
 		}
 		place := len(best)
-		for place > 0 && above(value, best[place-1].Value) {
+		for place > 0 && Above(value, best[place-1].Value) {
 			place--
 		}
 		if place == count {

@@ -141,8 +141,8 @@ func LargestOf(count int, rankings ...[]Peak) []Peak {
 	var best []Peak
 	for _, peak := range all {
 		place := len(best)
-		for place > 0 && (above(peak.Value, best[place-1].Value) ||
-			!above(best[place-1].Value, peak.Value) && peak.Sum < best[place-1].Sum) {
+		for place > 0 && (Above(peak.Value, best[place-1].Value) ||
+			!Above(best[place-1].Value, peak.Value) && peak.Sum < best[place-1].Sum) {
 			place--
 		}
 		best = slices.Insert(best, place, peak)

@@ -43,14 +43,14 @@ type best struct {
 }
 
 func (b *best) see(value, at float64) {
-	if !b.seen || above(value, b.value) {
+	if !b.seen || Above(value, b.value) {
 		b.value, b.at, b.seen = value, at, true
 	}
 }
 
 // reached says that a piece with this upper bound need not be searched.
 func (b *best) reached(bound, floor float64) bool {
-	return !above(bound, floor) || b.seen && !above(bound, b.value)
+	return !Above(bound, floor) || b.seen && !Above(bound, b.value)
 }
 
 func (p *Path) largestSigned(sum Sum, floor, sign float64) (value, at float64, exceeds bool) {
@@ -60,7 +60,7 @@ func (p *Path) largestSigned(sum Sum, floor, sign float64) (value, at float64, e
 		c := p.controls(piece, sum)
 		bound := math.Inf(-1)
 		for k := 0; k <= max(p.degree, 0); k++ {
-			bound = math.Max(bound, sign*c[k])
+			bound = max(bound, sign*c[k])
 		}
 		if found.reached(bound, floor) {
 			continue
@@ -74,7 +74,7 @@ func (p *Path) largestSigned(sum Sum, floor, sign float64) (value, at float64, e
 		}
 		found.see(sign*c[max(p.degree, 0)], from+length)
 	}
-	return found.value, found.at, found.seen && above(found.value, floor)
+	return found.value, found.at, found.seen && Above(found.value, floor)
 }
 
 func (p *Path) largestSize(sum Sum, floor float64) (value, at float64, exceeds bool) {
@@ -89,7 +89,7 @@ func (p *Path) largestSize(sum Sum, floor float64) (value, at float64, exceeds b
 // further says that a value goes before another of the same sum: it is larger,
 // or equal and nearer to the first end.
 func further(value, at, than, thanAt float64) bool {
-	return above(value, than) || !above(than, value) && at < thanAt
+	return Above(value, than) || !Above(than, value) && at < thanAt
 }
 
 // largestNorm searches √(a² + b²): its stationary places are the roots of
@@ -102,7 +102,7 @@ func largestNorm(sum Sum, floor float64, a, b *Path) (value, at float64, exceeds
 		degree := max(a.degree, b.degree)
 		bound := 0.0
 		for k := 0; k <= degree; k++ {
-			bound = math.Max(bound, math.Hypot(ca[k], cb[k]))
+			bound = max(bound, math.Hypot(ca[k], cb[k]))
 		}
 		if found.reached(bound, floor) {
 			continue
@@ -114,7 +114,7 @@ func largestNorm(sum Sum, floor float64, a, b *Path) (value, at float64, exceeds
 		}
 		found.see(math.Hypot(pa.At(length), pb.At(length)), from+length)
 	}
-	return found.value, found.at, found.seen && above(found.value, floor)
+	return found.value, found.at, found.seen && Above(found.value, floor)
 }
 
 // normStationary returns the places in (0, length) where a² + b² is stationary.

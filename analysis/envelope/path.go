@@ -116,9 +116,20 @@ func (p *Path) controls(piece int, sum Sum) (c element.Polynomial) {
 
 func (p *Path) summed(of []element.Polynomial, piece int, sum Sum) (c element.Polynomial) {
 	row := of[piece*p.states : (piece+1)*p.states]
+	if p.degree <= 2 { // most of them: written out, this is the innermost loop
+		var c0, c1, c2 float64
+		for _, t := range sum {
+			state := &row[t.State]
+			c0 += t.Factor * state[0]
+			c1 += t.Factor * state[1]
+			c2 += t.Factor * state[2]
+		}
+		c[0], c[1], c[2] = c0, c1, c2
+		return c
+	}
 	for _, t := range sum {
 		state := &row[t.State]
-		for k := 0; k <= p.degree; k++ {
+		for k := range c {
 			c[k] += t.Factor * state[k]
 		}
 	}

@@ -29,7 +29,7 @@ func largestOfTwo(sums []Sum, count int, c, a *Path) []Peak {
 		if ok {
 			floor = v
 		}
-		if w, atW, better := minus.largestSigned(sum, floor, 1); better && (!ok || above(w, v)) {
+		if w, atW, better := minus.largestSigned(sum, floor, 1); better && (!ok || Above(w, v)) {
 			return w, atW, true
 		}
 		return v, at, ok
@@ -47,7 +47,7 @@ type stretch struct {
 func (s *stretch) bound(degree int) float64 {
 	bound := math.Inf(-1)
 	for k := 0; k <= degree; k++ {
-		bound = math.Max(bound, s.value(k))
+		bound = max(bound, s.value(k))
 	}
 	return bound
 }
@@ -107,5 +107,5 @@ func largestOffset(sum Sum, floor float64, paths [3]*Path) (value, at float64, e
 			open = append(open, left, right)
 		}
 	}
-	return found.value, found.at, found.seen && above(found.value, floor)
+	return found.value, found.at, found.seen && Above(found.value, floor)
 }

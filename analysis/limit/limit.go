@@ -2,9 +2,13 @@ package limit
 
 import (
 	"cmp"
+	"context"
 	"fmt"
 	"math"
+	"runtime"
 	"slices"
+	"sync"
+	"sync/atomic"
 
 	"spanwright/analysis/element"
 	"spanwright/analysis/envelope"
@@ -52,8 +56,10 @@ type Outcome struct {
 // kept is how many verdicts are ranked: the governing one and the next three.
 const kept = 4
 
-// Check answers one limit in the given combinations.
-func Check(m *model.Model, index int, sums []envelope.Sum, from Source) Outcome {
+// Check answers one limit in the given combinations. Members are searched by
+// several goroutines; when the context ends the outcome is incomplete, and for
+// the bin.
+func Check(ctx context.Context, m *model.Model, index int, sums []envelope.Sum, from Source) Outcome {
 	l := &m.Limits[index]
 	c := &checker{m: m, limit: l, sums: sums, from: from}
 	outcome := Outcome{Limit: index, Governs: Verdict{Member: -1, Sum: -1}}
@@ -64,16 +70,10 @@ func Check(m *model.Model, index int, sums []envelope.Sum, from Source) Outcome 
 	if len(l.Targets) == 1 {
 		perTarget = kept
 	}
-	var all []Verdict
-	for _, target := range l.Targets {
-		peaks, problem := c.measure(target, perTarget)
-		if problem != "" {
-			outcome.Problem = problem
-			return outcome
-		}
-		for _, p := range peaks {
-			all = append(all, verdict(l, target, p))
-		}
+	all, problem := c.eachTarget(ctx, perTarget)
+	if problem != "" {
+		outcome.Problem = problem
+		return outcome
 	}
 	slices.SortStableFunc(all, func(a, b Verdict) int { return cmp.Compare(b.Ratio, a.Ratio) })
 	if len(all) == 0 {
@@ -84,6 +84,33 @@ func Check(m *model.Model, index int, sums []envelope.Sum, from Source) Outcome 
 	outcome.Next = all[1:min(kept, len(all))]
 	outcome.Holds = all[0].Ratio <= 1
 	return outcome
+}
+
+// eachTarget returns the verdicts on all targets in their order, or the problem
+// of the first that has one.
+func (c *checker) eachTarget(ctx context.Context, perTarget int) (all []Verdict, problem string) {
+	targets := c.limit.Targets
+	peaks := make([][]envelope.Peak, len(targets))
+	problems := make([]string, len(targets))
+	var group sync.WaitGroup
+	var next atomic.Int64
+	for range min(runtime.GOMAXPROCS(0), len(targets)) {
+		group.Go(func() {
+			for i := int(next.Add(1)) - 1; i < len(targets) && ctx.Err() == nil; i = int(next.Add(1)) - 1 {
+				peaks[i], problems[i] = c.measure(targets[i], perTarget)
+			}
+		})
+	}
+	group.Wait()
+	for i, target := range targets {
+		if problems[i] != "" {
+			return nil, problems[i]
+		}
+		for _, p := range peaks[i] {
+			all = append(all, verdict(c.limit, target, p))
+		}
+	}
+	return all, ""
 }
 
 // verdict sets a peak against its bound.

@@ -96,7 +96,7 @@ func TestEachMeasure(t *testing.T) {
 		{"reaction at most", model.Limit{Measure: model.Reaction, Node: 0, Freedom: 2, AtMost: true, Targets: of(-1, 32.4e3)}, 16.2e3, math.NaN(), 0, 0.5, true, 1.5e3},
 	} {
 		t.Run(c.name, func(t *testing.T) {
-			got := Check(model1(c.limit), 0, sums, girder())
+			got := Check(t.Context(), model1(c.limit), 0, sums, girder())
 			require.Empty(t, got.Problem)
 			assert.InEpsilon(t, c.value, got.Governs.Value, 1e-12)
 			assert.Equal(t, c.sum, got.Governs.Sum)
@@ -130,7 +130,7 @@ func TestSeveralMembersRankByTheirShare(t *testing.T) {
 		m.Limits[0].Targets = append(m.Limits[0].Targets, model.Target{Member: i, Bound: 0.1 - 0.01*float64(i)})
 	}
 	m.Limits[0].Targets = m.Limits[0].Targets[1:]
-	got := Check(m, 0, sums, from)
+	got := Check(t.Context(), m, 0, sums, from)
 	assert.Equal(t, 3, got.Governs.Member)
 	assert.False(t, got.Holds)
 	var next []int
@@ -157,12 +157,12 @@ func TestWhatCannotBeAnsweredSaysWhy(t *testing.T) {
 		from := girder()
 		from.along[1] = &envelope.Member{}
 		from.along[2], from.along[3] = from.along[0], from.along[0]
-		got := Check(m, 0, sums, from)
+		got := Check(t.Context(), m, 0, sums, from)
 		assert.Contains(t, got.Problem, c.words)
 		assert.Equal(t, -1, got.Governs.Sum)
 		assert.False(t, got.Holds)
 	}
-	got := Check(model1(model.Limit{Measure: model.Reaction, Node: 0, Freedom: 2}), 0, nil, girder())
+	got := Check(t.Context(), model1(model.Limit{Measure: model.Reaction, Node: 0, Freedom: 2}), 0, nil, girder())
 	assert.Contains(t, got.Problem, "no combination")
 }
 
