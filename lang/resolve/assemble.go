@@ -1,6 +1,7 @@
 package resolve
 
 import (
+	"math"
 	"slices"
 	"strings"
 
@@ -24,6 +25,7 @@ type assembly struct {
 	errors      bool
 	unitCounts  [64]int
 	nodeUnits   [64]int
+	turns       []float64 // by section: the angle to its principal axes
 }
 
 // lastKind bounds the kinds of statements.
@@ -165,6 +167,7 @@ func (a *assembly) buildMaterials() {
 		section := r.section
 		section.Name, section.Material, section.Origin = f.full(), material.index, a.origin(f)
 		section.Mass = section.A * m.Materials[material.index].Density
+		a.turns = append(a.turns, r.turned)
 		f.index = len(m.Sections)
 		m.Sections = append(m.Sections, section)
 	}
@@ -199,6 +202,9 @@ func (a *assembly) buildMembers() {
 				whole = false
 			} else {
 				member.Section = section.index
+				if turned := section.outcome.result.(*sectionResult).turned; r.kind == model.Beam {
+					member.Roll += turned
+				}
 			}
 		}
 		if !whole {
@@ -409,6 +415,9 @@ func (a *assembly) place(f *fragment, r *loadResult, item loadItem) (model.Load,
 		return load, true
 	}
 	load.Member = w.index
+	if load.Axes == model.Local {
+		a.turnLoad(&load)
+	}
 	if load.Kind == model.Gradient && load.From == facesMark {
 		load.From = 0
 		section := &a.model.Sections[a.model.Members[w.index].Section]
@@ -424,6 +433,23 @@ func (a *assembly) place(f *fragment, r *loadResult, item loadItem) (model.Load,
 		load.Amount /= size
 	}
 	return load, true
+}
+
+// turnLoad gives a load in member axes in the principal axes of the member's
+// section, where those are others: "local z" is as people see the section stand.
+func (a *assembly) turnLoad(load *model.Load) {
+	member := &a.model.Members[load.Member]
+	if member.Section < 0 || member.Kind != model.Beam {
+		return
+	}
+	turned := a.turns[member.Section]
+	if turned == 0 {
+		return
+	}
+	s, c := math.Sincos(turned)
+	for _, v := range []*[3]float64{&load.Start, &load.End} {
+		v[1], v[2] = c*v[1]+s*v[2], c*v[2]-s*v[1]
+	}
 }
 
 // buildLimits finds the members and bounds of the limits.

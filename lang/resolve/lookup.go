@@ -238,7 +238,7 @@ func (e *evaluation) checkName() {
 
 func (e *evaluation) checkDeclared(n *syntax.Name, kind Kind) {
 	switch {
-	case syntax.UnitSymbol(n.Text):
+	case syntax.UnitSymbol(n.Text) && !(powerOfUnit(n.Text) && neverInExpressions(kind)):
 		e.fail("name-is-unit", n.Span(), "Choose another name for this %s: %s is a unit.", kind, n.Text)
 	case syntax.Reserved(n.Text):
 		e.fail("name-is-reserved", n.Span(), "Choose another name for this %s: the language itself uses the word %s.", kind, n.Text)
@@ -247,6 +247,19 @@ func (e *evaluation) checkDeclared(n *syntax.Name, kind Kind) {
 	case !plainName(n.Text):
 		e.fail("name-letters", n.Span(), "Use letters a to z, digits and _ in a name: %s has other characters.", n.Text)
 	}
+}
+
+// powerOfUnit reports whether a unit is a power, such as m2: what the third of
+// m1, m2, m3 may well be called.
+func powerOfUnit(symbol string) bool {
+	c := symbol[len(symbol)-1]
+	return '2' <= c && c <= '6'
+}
+
+// neverInExpressions reports whether names of a kind stand in no expression, so
+// that they cannot be taken for a unit.
+func neverInExpressions(k Kind) bool {
+	return k.Member() || k == GroupName || k == SectionName || k == MaterialName || k == PartName
 }
 
 // plainName reports whether a name has nothing but letters of ASCII, digits, _

@@ -81,8 +81,7 @@ func (e *evaluation) properties(list []*syntax.Property, known []property, of st
 				e.fail("out-of-range", p.Value.Span, "Write Poisson's ratio between −1 and 0.5: %s is outside.", e.calls(p.Value.Root, "this"))
 				fine = false
 			}
-		} else if fine {
-			// A yield stress or an expansion of zero would mean nothing; leave it out.
+		} else if fine && !(v == 0 && (p.Word.Text == "density" || p.Word.Text == "expansion")) {
 			fine = e.positive(v, p.Value, p.Word.Text)
 		}
 		if !fine {

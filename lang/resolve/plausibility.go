@@ -84,9 +84,6 @@ func (e *evaluation) plausibleSection(tree *syntax.SectionStatement, s *model.Se
 			return
 		}
 	}
-	if p := value("A"); p != nil && (s.A > 100 || s.A < 1e-8) {
-		e.warn("implausible-value", p.Value.Span, "Check the unit of A: %s is far from any section of a member.", e.calls(p.Value.Root, "this"))
-	}
 }
 
 // plausibleLoad warns of amounts that are far from any load on a frame.

@@ -13,6 +13,9 @@ import (
 type sectionResult struct {
 	material *symbol
 	section  model.Section // without Name, Material, Mass and Origin
+	// turned is the angle (rad) from the section's own y to the major principal
+	// axis, to which its properties belong; 0 for most.
+	turned float64
 }
 
 func (r *sectionResult) same(other any) bool {
@@ -29,7 +32,7 @@ func (e *evaluation) section(tree *syntax.SectionStatement) {
 		ok = false
 	}
 	if tree.Profile != nil {
-		ok = e.profile(tree.Profile, &r.section) && ok
+		ok = e.profile(tree.Profile, r) && ok
 	} else {
 		v, fine := e.properties(tree.Properties, sectionProperties, "section")
 		ok = ok && fine
