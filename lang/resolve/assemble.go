@@ -485,6 +485,7 @@ func (a *assembly) buildLimits() {
 				limit.Under.Families = append(limit.Under.Families, i)
 			}
 		}
+		limit.Under.Generated = r.generated
 		if !whole {
 			continue
 		}

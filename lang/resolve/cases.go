@@ -236,35 +236,37 @@ type overrideResult struct {
 	of *symbol // the case, or nil
 }
 
-// codes are the codes of practice with their situations and rules.
-var codes = []struct {
+// codeOfPractice is a code with the sets of combinations that it knows.
+type codeOfPractice struct {
 	name       string
 	code       model.Code
 	situations map[string]model.Situation
-	rules      []string
-}{
+}
+
+var codes = []codeOfPractice{
 	{"EN1990", model.EN1990, map[string]model.Situation{
 		"strength": model.Strength, "characteristic": model.Characteristic,
-		"frequent": model.Frequent, "quasi-permanent": model.QuasiPermanent}, []string{"6.10", "6.10a/b"}},
-	{"ASCE7", model.ASCE7, map[string]model.Situation{"strength": model.Strength, "allowable": model.Allowable}, []string{"7-16", "7-22"}},
+		"frequent": model.Frequent, "quasi-permanent": model.QuasiPermanent}},
+	{"ASCE7", model.ASCE7, map[string]model.Situation{"strength": model.Strength, "allowable": model.Allowable}},
+}
+
+func codeNamed(name string) (codeOfPractice, bool) {
+	for _, c := range codes {
+		if strings.EqualFold(c.name, name) {
+			return c, true
+		}
+	}
+	return codeOfPractice{}, false
 }
 
 var situationOrder = []string{"strength", "characteristic", "frequent", "quasi-permanent", "allowable"}
 
 func (e *evaluation) family(tree *syntax.FamilyStatement) {
-	i := slices.IndexFunc(codes, func(c struct {
-		name       string
-		code       model.Code
-		situations map[string]model.Situation
-		rules      []string
-	}) bool {
-		return strings.EqualFold(c.name, tree.Code.Text)
-	})
-	if i < 0 {
+	code, ok := codeNamed(tree.Code.Text)
+	if !ok {
 		e.fail("unknown-code", tree.Code.Span(), "Write EN1990 or ASCE7: %s is no code known here.", tree.Code.Text)
 		return
 	}
-	code := codes[i]
 	situation, ok := code.situations[tree.Situation.Text]
 	if !ok {
 		var fit []string
@@ -282,16 +284,11 @@ func (e *evaluation) family(tree *syntax.FamilyStatement) {
 	r := &familyResult{code: code.code, situation: situation}
 	for _, o := range tree.Options {
 		if o.Rule != nil {
-			if !slices.Contains(code.rules, o.Rule.Text) {
-				e.fail("unknown-rule", o.Rule.Span, "Write rule %s: %s has no rule %s here.", either(code.rules), code.name, o.Rule.Text)
-				continue
+			// Which rules the code has is for analysis to know and to say.
+			if r.rule != "" {
+				r.rule += ", "
 			}
-			r.rule = o.Rule.Text
-			if code.code == model.ASCE7 {
-				r.rule = "ASCE " + o.Rule.Text
-			} else if r.rule == "6.10" {
-				r.rule = ""
-			}
+			r.rule += squeezed(o.Rule.Text)
 			continue
 		}
 		if v, fine := e.override(o, code.code); fine {

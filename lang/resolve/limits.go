@@ -6,6 +6,7 @@ import (
 
 	"spanwright/lang/model"
 	"spanwright/lang/quantity"
+	"spanwright/lang/source"
 	"spanwright/lang/syntax"
 )
 
@@ -22,6 +23,7 @@ type limitResult struct {
 	usesYield   bool
 	atMost      bool
 	under       []*symbol
+	generated   []string // names of combinations that a code asks for
 }
 
 // measure describes a measure of the language.
@@ -247,7 +249,8 @@ func (e *evaluation) under(tree *syntax.LimitStatement, m measure, r *limitResul
 	for _, n := range tree.Under {
 		w := e.find(Actions, n.Text, n.Span(), false)
 		if w == nil {
-			if e.generated(n.Text) {
+			if e.generated(n) {
+				r.generated = append(r.generated, n.Text)
 				continue
 			}
 			e.unknown(Actions, "case, combination or family", n.Text, n.Span())
@@ -261,4 +264,15 @@ func (e *evaluation) under(tree *syntax.LimitStatement, m measure, r *limitResul
 
 // generated reports whether a name is one of a family by a code, whose
 // combinations have names that only the analysis knows.
-func (e *evaluation) generated(string) bool { return false }
+func (e *evaluation) generated(n *syntax.Name) bool {
+	head, _, dotted := strings.Cut(n.Text, ".")
+	if !dotted {
+		return false
+	}
+	w := e.find(Actions, head, source.Span{Start: n.Span().Start, End: n.Span().Start + len(head)}, true)
+	if w == nil || w.kind != FamilyName {
+		return false
+	}
+	r, ok := w.result().(*familyResult)
+	return ok && r.code != model.Written
+}
