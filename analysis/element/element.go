@@ -187,3 +187,9 @@ func (e *Element) EndForces(d Vector, loads []SpanLoad) Vector {
 
 // at returns the place of (row, column) in a Matrix.
 func at(row, column int) int { return 12*row + column }
+
+// Same reports whether two elements are the same to the last digit, so that one
+// can stand for the other.
+func Same(a, b *Element) bool {
+	return a.kind == b.kind && a.length == b.length && a.props == b.props && a.joints == b.joints && a.springs == b.springs
+}

@@ -18,9 +18,13 @@ type Factor struct {
 	panels   []float64
 	stack    []float64
 	noted    []int
+	tiny     float64
+
+	smallest   float64 // pivot of the scaled matrix
+	smallestAt int
 }
 
-// Tiny is the pivot of the scaled matrix below which a freedom is noted.
+// Tiny is the pivot of the scaled matrix below which an unknown deserves a look.
 const Tiny = 1e-12
 
 // ErrMisuse says that a matrix or right-hand side does not belong to the factor.
@@ -32,16 +36,18 @@ func NewFactor(s *Symbolic) *Factor {
 }
 
 // Factorize computes the factor of a matrix. It returns the unknowns, in the
-// order of elimination, at which the pivot was below [Tiny]: in its place 1 was
+// order of elimination, at which the pivot was not above
+// tiny ([Tiny] as a rule): in its place 1 was
 // put, which is as if a spring held the unknown there, and the factor is that of
 // the matrix with those springs. A positive definite matrix notes none. The
 // context is looked at between fronts.
-func (f *Factor) Factorize(ctx context.Context, m *Matrix) (noted []int, err error) {
+func (f *Factor) Factorize(ctx context.Context, m *Matrix, tiny float64) (noted []int, err error) {
 	if m.symbolic != f.symbolic {
 		return nil, ErrMisuse
 	}
 	f.setScale(m)
-	f.noted = f.noted[:0]
+	f.tiny = tiny
+	f.noted, f.smallest, f.smallestAt = f.noted[:0], math.Inf(1), -1
 	for i := range f.symbolic.fronts {
 		if i%64 == 0 && ctx.Err() != nil {
 			return nil, ctx.Err()
@@ -50,6 +56,14 @@ func (f *Factor) Factorize(ctx context.Context, m *Matrix) (noted []int, err err
 	}
 	return f.noted, nil
 }
+
+// Smallest returns the smallest pivot of the scaled matrix, 1 at the most, and
+// its unknown; −1 for a matrix without any.
+func (f *Factor) Smallest() (pivot float64, unknown int) { return f.smallest, f.smallestAt }
+
+// Spring returns the stiffness, in the unscaled matrix, of the spring that stands
+// for a noted unknown.
+func (f *Factor) Spring(unknown int) float64 { return 1 / (f.scale[unknown] * f.scale[unknown]) }
 
 // setScale takes the inverse roots of the diagonal; a diagonal of zero or below
 // counts as one, and its pivot will be noted.
@@ -171,7 +185,10 @@ func (f *Factor) eliminateTop(fr *front, panel []float64, stride, k, w int) {
 		for _, v := range row[:j] {
 			pivot -= v * v
 		}
-		if !(pivot > Tiny) {
+		if !(pivot >= f.smallest) {
+			f.smallest, f.smallestAt = pivot, int(fr.rows[k+j])
+		}
+		if !(pivot > f.tiny) {
 			f.noted = append(f.noted, int(fr.rows[k+j]))
 			pivot = 1
 		}

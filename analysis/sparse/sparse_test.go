@@ -81,7 +81,7 @@ func TestSolvesAsTheDenseFactorisationDoes(t *testing.T) {
 			return
 		}
 		f := NewFactor(m.symbolic)
-		noted, err := f.Factorize(context.Background(), m)
+		noted, err := f.Factorize(context.Background(), m, Tiny)
 		require.NoError(t, err)
 		require.Empty(t, noted)
 		count := rapid.IntRange(1, 40).Draw(t, "right-hand sides")
@@ -141,7 +141,7 @@ func TestALargeGridIsSolved(t *testing.T) {
 	m := random(t, grid(6, 5, 8), 3)
 	n := m.symbolic.n
 	f := NewFactor(m.symbolic)
-	_, err := f.Factorize(context.Background(), m)
+	_, err := f.Factorize(context.Background(), m, Tiny)
 	require.NoError(t, err)
 	want, b := make([]float64, n), make([]float64, n)
 	for i := range want {
@@ -159,7 +159,7 @@ func TestRefactorisationAllocatesNothing(t *testing.T) {
 	f := NewFactor(m.symbolic)
 	ctx := context.Background()
 	assert.Zero(t, testing.AllocsPerRun(5, func() {
-		if _, err := f.Factorize(ctx, m); err != nil {
+		if _, err := f.Factorize(ctx, m, Tiny); err != nil {
 			t.Fatal(err)
 		}
 	}))
@@ -178,7 +178,7 @@ func TestAFreeMovementIsNoted(t *testing.T) {
 		m.AddBlock(e[0], e[1], []float64{-5})
 	}
 	f := NewFactor(s)
-	noted, err := f.Factorize(context.Background(), m)
+	noted, err := f.Factorize(context.Background(), m, Tiny)
 	require.NoError(t, err)
 	require.Len(t, noted, 1)
 	x := make([]float64, 4)
@@ -202,7 +202,7 @@ func BenchmarkFactorize(b *testing.B) {
 			m := random(b, p, 1)
 			f := NewFactor(m.symbolic)
 			for b.Loop() {
-				if _, err := f.Factorize(context.Background(), m); err != nil {
+				if _, err := f.Factorize(context.Background(), m, Tiny); err != nil {
 					b.Fatal(err)
 				}
 			}
