@@ -23,7 +23,8 @@ type Member struct {
 }
 
 // NewMember makes a member from the pieces of each state, which follow each
-// other from the first end to the last. The states may have different breaks.
+// other from the first end to the last. The states may have different breaks; a
+// state without pieces is zero everywhere.
 func NewMember(states [][]element.Piece, bentKnown bool) *Member {
 	m := &Member{BentKnown: bentKnown, breaks: commonBreaks(states)}
 	m.Length = m.breaks[len(m.breaks)-1]
@@ -63,6 +64,12 @@ func split(pieces []element.Piece, breaks []float64) []element.Piece {
 		return pieces
 	}
 	cut := make([]element.Piece, len(breaks)-1)
+	if len(pieces) == 0 { // a rigid link: nothing is known along it
+		for i := range cut {
+			cut[i] = element.Piece{From: breaks[i], To: breaks[i+1]}
+		}
+		return cut
+	}
 	at := 0
 	for i := range cut {
 		middle := breaks[i] + (breaks[i+1]-breaks[i])/2

@@ -59,6 +59,11 @@ func TestMemberWithoutLength(t *testing.T) {
 	m := NewMember([][]element.Piece{{p}}, true)
 	most, _ := m.Path(element.N).Extremes([]Sum{{{0, 2}}})
 	assert.Equal(t, Peak{14, 0, 0}, most)
+
+	link := NewMember([][]element.Piece{nil, {p}}, true)
+	most, _ = link.Path(element.N).Extremes([]Sum{{{0, 2}}, {{1, 1}}})
+	assert.Equal(t, Peak{7, 0, 1}, most)
+	assert.Zero(t, link.At(element.My, Sum{{0, 2}}, 0, true))
 }
 
 func TestLargestOfKeepsTheLargestOfEachSum(t *testing.T) {
