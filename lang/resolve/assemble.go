@@ -25,14 +25,15 @@ type assembly struct {
 	errors      bool
 	unitCounts  [64]int
 	nodeUnits   [64]int
-	turns       []float64 // by section: the angle to its principal axes
+	told        map[string]bool // properties whose lack has been reported
+	turns       []float64       // by section: the angle to its principal axes
 }
 
 // lastKind bounds the kinds of statements.
 const lastKind = int(syntax.CloseKind) + 1
 
 func (s *Session) assemble() *Result {
-	a := &assembly{Session: s, files: map[*sheet]int{}}
+	a := &assembly{Session: s, files: map[*sheet]int{}, told: map[string]bool{}}
 	a.model = &model.Model{
 		Title: s.header.title, Plane: s.header.plane, SecondOrder: s.header.secondOrder,
 		ShearFlexible: s.header.shearFlexible, Gravity: s.header.gravity,

@@ -18,10 +18,11 @@ type fragment struct {
 	owner     *fragment // the case that a load line stands in, or nil
 	parameter int       // for a parameter: its number among the part's; else −1
 	kind      Kind
-	name      *symbol   // what the statement declares, or nil
-	inner     *instance // what a place makes of its part
-	body      []line    // of a part: its lines
-	expansion expansion // of a place: why it makes nothing of its part
+	name      *symbol     // what the statement declares, or nil
+	inner     *instance   // what a place makes of its part
+	body      []line      // of a part: its lines
+	use       *useProblem // of a use: why the file cannot be had
+	expansion expansion   // of a place: why it makes nothing of its part
 
 	order        int
 	state        state
@@ -31,6 +32,8 @@ type fragment struct {
 	evaluated    int // revision of the last evaluation
 	changed      int // revision in which the outcome last changed
 	index        int // in the model's slice of its kind, set at each assembly; −1: not in the model
+
+	bodies []*body // where a node or member stands in the grid
 
 	visit, low int // for finding cycles
 	open       bool

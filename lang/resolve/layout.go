@@ -11,8 +11,7 @@ type sheet struct {
 	path      string
 	tree      *syntax.Tree
 	fragments []*fragment // of the statements that stand outside of parts
-	uses      map[int]*useProblem
-	seen      int // revision that last used the file
+	seen      int         // revision that last used the file
 }
 
 // line is a statement in its place in a file.

@@ -10,7 +10,13 @@ import (
 // materialResult is the properties of a material; 0 where not given.
 type materialResult struct {
 	grade                           string
+	zeroDensity, zeroExpansion      bool // written as zero, on purpose
 	e, g, density, expansion, yield float64
+}
+
+// given reports whether a property stands in the text with the value zero.
+func (r *materialResult) given(word string) bool {
+	return word == "density" && r.zeroDensity || word == "expansion" && r.zeroExpansion
 }
 
 func (r *materialResult) same(other any) bool {
@@ -108,6 +114,9 @@ func (e *evaluation) material(tree *syntax.MaterialStatement) {
 		e.fail("missing-property", e.nameSpan(), "Give %s its modulus of elasticity: write E 210 GPa, or what is right for it.", tree.Name.Text)
 		return
 	}
+	_, hasDensity := v["density"]
+	_, hasExpansion := v["expansion"]
+	r.zeroDensity, r.zeroExpansion = hasDensity && r.density == 0, hasExpansion && r.expansion == 0
 	poisson, given := v["poisson"]
 	if given {
 		shear := r.e / (2 * (1 + poisson))

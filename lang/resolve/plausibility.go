@@ -12,7 +12,7 @@ import (
 // common practice, not a standard. What lies outside is almost surely a slip in
 // a unit.
 const (
-	softestE, stiffestE     = 5e6, 1.2e12 // Pa: soft rubber to diamond
+	softestE, stiffestE     = 5e5, 1.2e12 // Pa: soft rubber to diamond
 	lightest, heaviest      = 5.0, 25e3   // kg/m3: foam to tungsten and beyond
 	weakestYield, strongest = 1e5, 6e9    // Pa
 	leastExpansion          = 1e-8        // 1/K
@@ -47,7 +47,7 @@ func (e *evaluation) plausibleMaterial(tree *syntax.MaterialStatement, r *materi
 		e.warn("implausible-value", p.Value.Span, "Check the unit of G: %s does not go with E; it is mostly a third to a half of E, less in timber.", e.calls(p.Value.Root, "this"))
 		return
 	}
-	if p := span("density"); p != nil && (r.density < lightest || r.density > heaviest) {
+	if p := span("density"); p != nil && r.density > 0 && (r.density < lightest || r.density > heaviest) {
 		e.warn("implausible-value", p.Value.Span, "Check the unit of the density: %s is %s kg/m3; steel has 7850 kg/m3.", e.calls(p.Value.Root, "this"), quantity.Number(r.density, 3))
 		return
 	}
@@ -55,7 +55,7 @@ func (e *evaluation) plausibleMaterial(tree *syntax.MaterialStatement, r *materi
 		e.warn("implausible-value", p.Value.Span, "Check the unit of the yield stress: %s is far from any building material; S275 has 275 MPa.", e.calls(p.Value.Root, "this"))
 		return
 	}
-	if p := span("expansion"); p != nil && (r.expansion < leastExpansion || r.expansion > mostExpansion) {
+	if p := span("expansion"); p != nil && r.expansion > 0 && (r.expansion < leastExpansion || r.expansion > mostExpansion) {
 		e.warn("implausible-value", p.Value.Span, "Check the thermal expansion: %s is far from any building material; steel has 12e-6 /K.", e.calls(p.Value.Root, "this"))
 	}
 }

@@ -88,6 +88,13 @@ func (a *assembly) report(r *Result) {
 			}
 		}
 	}
+	for _, f := range a.main.fragments {
+		if first := a.firstModel(); f.statement.Kind == syntax.ModelKind && f != first {
+			found := &finding{Diagnostic: diagnostic.Diagnostic{Name: "second-model", Severity: diagnostic.Error, Subject: f.nameSpan(), Summary: "Delete this line: a file has one model line."}}
+			found.relate(first, "the model line")
+			a.locate(f, found)
+		}
+	}
 	r.Library = !a.header.found && a.onlyDeclares()
 	if !a.header.found && !r.Library {
 		a.noModelLine()

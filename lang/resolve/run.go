@@ -115,9 +115,6 @@ func (e *evaluation) model(tree *syntax.ModelStatement) {
 			r.gravity = g
 		}
 	}
-	if w := e.session.firstModel(); w != e.fragment {
-		e.fail("second-model", e.nameSpan(), "Delete this line: a file has one model line.").relate(w, "the model line")
-	}
 }
 
 // standardGravity is in m/s2 (3rd CGPM, 1901).

@@ -63,13 +63,13 @@ func (s *Session) visitFile(sh *sheet, tree *syntax.Tree, loader Loader, around 
 		if f.statement.Kind != syntax.UseKind {
 			continue
 		}
-		before, now := sh.uses[f.unit], problems[f.unit]
-		if f.outcome == nil || (before == nil) != (now == nil) || before != nil && *before != *now {
+		now := problems[f.unit]
+		if (f.use == nil) != (now == nil) || now != nil && *f.use != *now {
 			f.must = true
 			s.mark(f)
 		}
+		f.use = now
 	}
-	sh.uses = problems
 	s.order = append(s.order, sh)
 }
 
@@ -124,7 +124,7 @@ func (s *Session) visitUse(sh *sheet, written string, loader Loader, around []st
 
 // use reports why a file cannot be used.
 func (e *evaluation) use(tree *syntax.UseStatement) {
-	if p := e.sheet.uses[e.unit]; p != nil {
+	if p := e.fragment.use; p != nil {
 		e.fail(p.name, tree.Path.Span(), "%s", p.summary)
 	}
 }
