@@ -25,7 +25,7 @@ func (r *Results) LimitDiagnostics(ctx context.Context) ([]diagnostic.Diagnostic
 	}
 	var list []diagnostic.Diagnostic
 	for _, l := range limits {
-		origin := r.model.Limits[l.Limit].Origin
+		origin := r.model.Limits[l.Index].Origin
 		for _, name := range l.Unknown {
 			list = append(list, about(r.model, origin, diagnostic.UnknownCombination, fmt.Sprintf("There is no combination %s.%s", name, r.nearest(name))))
 		}
@@ -47,7 +47,7 @@ func (r *Results) LimitDiagnostics(ctx context.Context) ([]diagnostic.Diagnostic
 // nextWords lists the verdicts that follow the governing one.
 func (r *Results) nextWords(l Limit) string {
 	words := ""
-	written := &r.model.Limits[l.Limit]
+	written := &r.model.Limits[l.Index]
 	for _, v := range l.Next {
 		if v.Ratio < 0.5*min(l.Governs.Ratio, 1) {
 			break

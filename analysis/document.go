@@ -312,7 +312,7 @@ func (r *Results) documentGoverned(g Governed, placed bool) documentGoverned {
 }
 
 func (r *Results) documentLimit(l Limit) documentLimit {
-	written := &r.model.Limits[l.Limit]
+	written := &r.model.Limits[l.Index]
 	d := documentLimit{Line: line(r.model, written.Origin), Text: written.Text, OK: l.Holds, Problem: l.Problem}
 	if written.Origin.File > 0 {
 		d.File = r.model.Files[written.Origin.File].Path

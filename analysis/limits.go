@@ -12,19 +12,31 @@ import (
 
 // Limit is the answer to one limit of the model.
 type Limit struct {
-	limit.Outcome
-	// Governs and Next have the numbers of results where Outcome has those of
-	// sums; Governs.Result is −1 where Problem says why there is no answer.
+	Index int // into Model.Limits
+	// Governs is the worst verdict; Governs.Result is −1 where there is none, and
+	// Problem says why. Next are at most three that follow it: other members where
+	// the limit has several, else other results.
 	Governs Verdict
 	Next    []Verdict
+	Holds   bool
+	// Problem says why the limit was not checked, or not fully. Then it counts
+	// neither as held nor as broken.
+	Problem string
 	// Unknown are the combinations that the limit names and that do not exist.
 	Unknown []string
 }
 
 // Verdict is what a limit comes to on one member or node in one result.
 type Verdict struct {
-	limit.Verdict
-	Result int // number in Results, or −1
+	Member int     // index into Model.Members, or −1
+	Result int     // number in Results, or −1
+	Value  float64 // SI; a size where the limit is on a size, as limit.Check says
+	Bound  float64 // SI
+	// Ratio is the share of the bound that is used up: above 1 exactly where the
+	// limit is broken, and +Inf where a bound is broken that leaves no share, such
+	// as zero.
+	Ratio float64
+	At    float64 // m from the member's first end; NaN where the measure has no place
 }
 
 // limitsOnce keeps the limits once somebody asked for them.
@@ -65,20 +77,21 @@ func (r *Results) checkLimit(ctx context.Context, i int) Limit {
 			numbers = append(numbers, s)
 		}
 	}
-	l := Limit{Outcome: limit.Check(ctx, r.model, i, sums, limitSource{r}), Unknown: unknown}
+	outcome := limit.Check(ctx, r.model, i, sums, limitSource{r})
+	number := func(v limit.Verdict) Verdict {
+		numbered := Verdict{v.Member, -1, v.Value, v.Bound, v.Ratio, v.At}
+		if v.Sum >= 0 {
+			numbered.Result = numbers[v.Sum]
+		}
+		return numbered
+	}
+	l := Limit{Index: i, Governs: number(outcome.Governs), Holds: outcome.Holds, Problem: outcome.Problem, Unknown: unknown}
+	for _, v := range outcome.Next {
+		l.Next = append(l.Next, number(v))
+	}
 	if l.Problem == "" && len(numbers) < len(subjects) {
 		l.Problem = fmt.Sprintf("%s has no result, so the limit is not fully checked.", r.firstProblem(subjects))
 		l.Holds = false
-	}
-	number := func(v limit.Verdict) Verdict {
-		if v.Sum < 0 {
-			return Verdict{v, -1}
-		}
-		return Verdict{v, numbers[v.Sum]}
-	}
-	l.Governs = number(l.Outcome.Governs)
-	for _, v := range l.Outcome.Next {
-		l.Next = append(l.Next, number(v))
 	}
 	return l
 }

@@ -16,7 +16,7 @@ func (r *Results) Words(l Limit) string {
 		return l.Problem
 	}
 	m := r.model
-	written := &m.Limits[l.Outcome.Limit]
+	written := &m.Limits[l.Index]
 	v := l.Governs
 	show := measureUnit(m, written)
 	var b strings.Builder
