@@ -9,6 +9,7 @@ import (
 	"spanwright/analysis/combine"
 	"spanwright/lang/diagnostic"
 	"spanwright/lang/model"
+	"spanwright/lang/quantity"
 )
 
 // Diagnostics returns what there is to say about the solve: why there are no
@@ -52,7 +53,7 @@ func (r *Results) nextWords(l Limit) string {
 		if v.Ratio < 0.5*min(l.Governs.Ratio, 1) {
 			break
 		}
-		words += fmt.Sprintf("\n%s: %s in %s", measureWords(r.model, written, v.Member), measureUnit(r.model, written)(v.Value), r.At(v.Result).Name())
+		words += fmt.Sprintf("\n%s: %s in %s", MeasureWords(r.model, written, v.Member), quantity.Write(v.Value, MeasureUnit(r.model.Display, written), 3), r.At(v.Result).Name())
 		if share := ShareWords(v.Ratio); share != "" {
 			words += " (" + share + ")"
 		}

@@ -18,9 +18,10 @@ func (r *Results) Words(l Limit) string {
 	m := r.model
 	written := &m.Limits[l.Index]
 	v := l.Governs
-	show := measureUnit(m, written)
+	unit := MeasureUnit(m.Display, written)
+	show := func(value float64) string { return quantity.Write(value, unit, 3) }
 	var b strings.Builder
-	fmt.Fprintf(&b, "%s is %s in %s", measureWords(m, written, v.Member), show(v.Value), r.At(v.Result).Name())
+	fmt.Fprintf(&b, "%s is %s in %s", MeasureWords(m, written, v.Member), show(v.Value), r.At(v.Result).Name())
 	if !math.IsNaN(v.At) && v.Member >= 0 {
 		fmt.Fprintf(&b, " at %s", PlaceWords(m, v.Member, v.At))
 	}
@@ -63,8 +64,9 @@ var (
 	ForceNames    = [6]string{"Fx", "Fy", "Fz", "Mx", "My", "Mz"}
 )
 
-// measureWords writes what a limit measures, of the member that governs.
-func measureWords(m *model.Model, l *model.Limit, member int) string {
+// MeasureWords writes what a limit measures, of one member where it is about
+// members: "deflection of r2".
+func MeasureWords(m *model.Model, l *model.Limit, member int) string {
 	name := ""
 	if member >= 0 {
 		name = m.Members[member].Name
@@ -92,30 +94,28 @@ func measureWords(m *model.Model, l *model.Limit, member int) string {
 	return "frequency"
 }
 
-// measureUnit returns how values of a limit's measure are written.
-func measureUnit(m *model.Model, l *model.Limit) func(float64) string {
-	d := m.Display
-	unit := d.Force
+// MeasureUnit returns the unit in which values of a limit's measure are shown.
+func MeasureUnit(d quantity.Display, l *model.Limit) quantity.Unit {
 	switch l.Measure {
 	case model.Deflection, model.Drift:
-		unit = d.Movement
+		return d.Movement
 	case model.Movement:
-		unit = d.Movement
 		if l.Freedom > 2 {
-			unit = d.Angle
+			return d.Angle
 		}
+		return d.Movement
 	case model.Stress:
-		unit = d.Stress
+		return d.Stress
 	case model.BendingMoment:
-		unit = d.Moment
+		return d.Moment
 	case model.Reaction:
 		if l.Freedom > 2 {
-			unit = d.Moment
+			return d.Moment
 		}
 	case model.CriticalFactor:
-		unit = d.For(quantity.None)
+		return d.For(quantity.None)
 	case model.Frequency:
-		unit = d.For(quantity.Frequency)
+		return d.For(quantity.Frequency)
 	}
-	return func(value float64) string { return quantity.Write(value, unit, 3) }
+	return d.Force
 }
