@@ -83,7 +83,22 @@ func (e *Element) throughJoints() Matrix {
 			k[at(i, i)] = 0
 		}
 	}
+	e.clearRemains(&k)
 	return k
+}
+
+// clearRemains puts exact zeros where the joints leave a movement without any
+// resistance and condensation left only rounding: the twist of a member whose
+// other end lets it spin. Such remains would pass for a stiffness.
+func (e *Element) clearRemains(k *Matrix) {
+	for i := range 12 {
+		if k[at(i, i)] >= loosePivot*e.full[at(i, i)] {
+			continue
+		}
+		for j := range 12 {
+			k[at(i, j)], k[at(j, i)] = 0, 0
+		}
+	}
 }
 
 // invertSoft returns the inverse of K_SS + k by Gauss–Jordan elimination on the

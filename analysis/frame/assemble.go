@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"spanwright/analysis/element"
+	"spanwright/lang/model"
 )
 
 // legs are the movements of a segment's end, in its own axes, for unit free
@@ -117,6 +118,28 @@ func (s *Structure) addTurning(sum *[9]float64, g *segment, end int) {
 	k := block(g.element.Stiffness(), end, end, turns[:], turns[:])
 	for i := range k {
 		sum[i] += k[i]
+	}
+	s.addTwist(sum, g, end)
+}
+
+// addTwist counts a beam that is fast in torsion at this end as resisting, even
+// where its far end lets it spin: body and beam then spin together, which is a
+// mechanism and not a local turn that nobody holds.
+func (s *Structure) addTwist(sum *[9]float64, g *segment, end int) {
+	m := &s.model.Members[g.member]
+	if m.Kind != model.Beam {
+		return
+	}
+	outer := end == 0 && g.from == 0 || end == 1 && g.to == m.Length
+	if outer && m.Ends[end].Joint[3].Kind == model.Released {
+		return
+	}
+	section := &s.model.Sections[m.Section]
+	twist := s.model.Materials[section.Material].G * section.It / m.Length
+	for r := range 3 {
+		for c := range 3 {
+			sum[3*r+c] += twist * g.axes[0][r] * g.axes[0][c]
+		}
 	}
 }
 
