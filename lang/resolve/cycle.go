@@ -121,6 +121,9 @@ func (s *Session) names(f *fragment, visit func(space Space, name string, span s
 			}
 		})
 	}
+	if f.statement.Broken() {
+		return
+	}
 	switch tree := f.statement.Tree.(type) {
 	case *syntax.LetStatement:
 		expression(tree.Value)

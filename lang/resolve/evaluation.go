@@ -59,9 +59,14 @@ func (f *finding) fix(title string, span source.Span, text string) *finding {
 
 // relate adds another place that belongs to the finding.
 func (f *finding) relate(other *fragment, message string, arguments ...any) *finding {
-	if other != nil {
-		f.related = append(f.related, relation{other, fmt.Sprintf(message, arguments...)})
+	if other == nil {
+		return f
 	}
+	r := relation{symbol: other.name, message: fmt.Sprintf(message, arguments...)}
+	if other.name == nil || other.name.winner() != other {
+		r.symbol, r.fragment = nil, other
+	}
+	f.related = append(f.related, r)
 	return f
 }
 

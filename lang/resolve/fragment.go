@@ -62,11 +62,21 @@ type finding struct {
 	unknown *unknownName // for a name that stands for nothing: the words come later
 }
 
-// relation is another place of a finding, known by the fragment that stands
-// there.
+// relation is another place of a finding: where a name is declared, or where a
+// fragment without a name stands. A name's line may have been written anew since
+// the finding, without the finding being any different.
 type relation struct {
-	fragment *fragment
+	symbol   *symbol
+	fragment *fragment // where symbol is nil
 	message  string
+}
+
+// stands returns the fragment at the place, or nil where there is none any more.
+func (r *relation) stands() *fragment {
+	if r.symbol != nil {
+		return r.symbol.winner()
+	}
+	return r.fragment
 }
 
 // reference is a name in the text with what it stands for.

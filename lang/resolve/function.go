@@ -53,6 +53,13 @@ func functionNames() []string {
 
 // call works a function out.
 func (e *evaluation) call(n *syntax.CallNode) value {
+	// All arguments are worked out, so that every name in them is looked up.
+	arguments := make([]value, len(n.Arguments))
+	whole := true
+	for i, a := range n.Arguments {
+		arguments[i] = e.node(a)
+		whole = whole && !arguments[i].isBad()
+	}
 	name := n.Function.Text
 	i := slices.IndexFunc(functions, func(f Function) bool { return f.Name == name })
 	if i < 0 {
@@ -63,11 +70,8 @@ func (e *evaluation) call(n *syntax.CallNode) value {
 		e.fail("wrong-arguments", n.Span, "Write %s: this call has %d values.", f.Form, len(n.Arguments))
 		return bad
 	}
-	arguments := make([]value, len(n.Arguments))
-	for i, a := range n.Arguments {
-		if arguments[i] = e.node(a); arguments[i].isBad() {
-			return bad
-		}
+	if !whole {
+		return bad
 	}
 	if name == "abs" && arguments[0].isVector() {
 		return norm(arguments[0])

@@ -23,11 +23,12 @@ func (a *assembly) locate(f *fragment, found *finding) *diagnostic.Diagnostic {
 	d.Context = whole
 	d.Related = nil
 	for _, r := range found.related {
-		if r.fragment.sheet == nil {
+		other := r.stands()
+		if other == nil {
 			continue
 		}
-		at := r.fragment.sheet.tree.Units[r.fragment.unit].Start
-		d.Related = append(d.Related, diagnostic.Related{File: r.fragment.sheet.path, Span: r.fragment.nameSpan().Shift(at), Message: r.message})
+		at := other.sheet.tree.Units[other.unit].Start
+		d.Related = append(d.Related, diagnostic.Related{File: other.sheet.path, Span: other.nameSpan().Shift(at), Message: r.message})
 	}
 	for p := f.place; p != nil && p.name != nil; p = p.place {
 		at := p.sheet.tree.Units[p.unit].Start

@@ -233,11 +233,11 @@ func (s *Session) refresh(f *fragment) {
 	if f.state == clean {
 		return
 	}
+	// Clean from here on: a name of the wrong kind may lead back to the fragment.
+	f.state = clean
 	if !f.must && !s.stale(f) {
-		f.state = clean
 		return
 	}
-	f.state = clean
 	f.forget(s.symbols)
 	before := f.outcome
 	e := &evaluation{session: s, fragment: f, out: &outcome{}}
