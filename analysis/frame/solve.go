@@ -129,6 +129,11 @@ func (s *Structure) movedSupports(l *loading) []vector6 {
 	return moved
 }
 
+// substitute replaces right-hand sides, one behind the other, by the unknowns.
+func (s *Structure) substitute(ctx context.Context, x []float64, count int) error {
+	return s.factor.Solve(ctx, x, count)
+}
+
 // solveAll solves several loadings together.
 func (s *Structure) solveAll(ctx context.Context, list []loading) ([]*State, error) {
 	n := s.unknowns
