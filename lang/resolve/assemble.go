@@ -55,8 +55,12 @@ func (s *Session) assemble() *Result {
 	a.report(r)
 	r.entries = make([]entry, len(a.all))
 	for i, f := range a.all {
-		r.entries[i] = entry{f, f.outcome, a.files[f.sheet], f.unit}
+		r.entries[i] = entry{fragment: f, outcome: f.outcome, file: int32(a.files[f.sheet]), unit: int32(f.unit)}
+		if f.inner != nil {
+			r.entries[i].inner = f.inner.scope
+		}
 	}
+	r.header, r.global = s.header, s.global
 	return r
 }
 

@@ -17,12 +17,14 @@ type fragment struct {
 	place     *fragment
 	owner     *fragment // the case that a load line stands in, or nil
 	parameter int       // for a parameter: its number among the part's; else −1
-	kind      Kind
-	name      *symbol     // what the statement declares, or nil
-	inner     *instance   // what a place makes of its part
-	body      []line      // of a part: its lines
-	use       *useProblem // of a use: why the file cannot be had
-	expansion expansion   // of a place: why it makes nothing of its part
+	// partStatement is, for a parameter, the opening of the part that declares it.
+	partStatement *syntax.Statement
+	kind          Kind
+	name          *symbol     // what the statement declares, or nil
+	inner         *instance   // what a place makes of its part
+	body          []line      // of a part: its lines
+	use           *useProblem // of a use: why the file cannot be had
+	expansion     expansion   // of a place: why it makes nothing of its part
 
 	order        int
 	state        state

@@ -238,7 +238,7 @@ func (s *Session) fill(f *fragment, in *instance) {
 		in.opening, in.parameters = in.part.statement, nil
 		if tree, ok := in.part.statement.Tree.(*syntax.PartStatement); ok {
 			for i, p := range tree.Parameters {
-				parameter := &fragment{sheet: f.sheet, statement: f.statement, unit: f.unit, scope: f.scope, place: f, parameter: i, kind: ParameterName}
+				parameter := &fragment{sheet: f.sheet, statement: f.statement, unit: f.unit, scope: f.scope, place: f, parameter: i, kind: ParameterName, partStatement: in.part.statement}
 				in.parameters = append(in.parameters, parameter)
 				s.declareName(parameter, p.Text)
 				s.add(parameter)

@@ -3,6 +3,7 @@ package resolve
 import (
 	"spanwright/lang/diagnostic"
 	"spanwright/lang/model"
+	"spanwright/lang/source"
 	"spanwright/lang/syntax"
 )
 
@@ -23,12 +24,32 @@ type Result struct {
 	Trees []*syntax.Tree
 
 	entries []entry // every statement with what it came to, in the order of the text
+	header  header
+	global  *scope
+	names   nameIndex
+	values  valueIndex
 }
 
-// entry is one statement of a result.
+// entry is one statement of a result, in its scope. Of the fragment only what
+// never changes may be read here: statement, scope, place, parameter, kind and
+// name.
 type entry struct {
-	fragment *fragment // only its parts that never change may be read here
+	fragment *fragment
 	outcome  *outcome
-	file     int
-	unit     int
+	inner    *scope // of a placed part: its names
+	file     int32
+	unit     int32
+}
+
+// span returns the statement's place in its file.
+func (r *Result) span(e *entry) source.Span { return r.Trees[e.file].Units[e.unit].Span() }
+
+// FileIndex returns the index of a file in Trees and Model.Files, or −1.
+func (r *Result) FileIndex(path string) int {
+	for i, t := range r.Trees {
+		if t.File.Path == path {
+			return i
+		}
+	}
+	return -1
 }

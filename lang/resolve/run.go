@@ -226,7 +226,7 @@ func (e *evaluation) ownPlace() *placeResult {
 	if e.place == nil {
 		return nil
 	}
-	if e.place.name != nil {
+	if e.place.name != nil && !e.silent {
 		e.depend(e.place.name, true)
 	}
 	e.session.settle(e.place)
