@@ -1,6 +1,9 @@
 package envelope
 
-import "math"
+import (
+	"math"
+	"slices"
+)
 
 // equal is the relative difference below which two values count as equal.
 const equal = 1e-12
@@ -49,35 +52,55 @@ func (p *Path) Extremes(sums []Sum) (most, least Peak) {
 	return most, least
 }
 
-// search finds the largest value that a measure takes in one sum along the
-// whole length. It may stop and report false as soon as it knows that the value
-// does not exceed floor.
-type search func(sum Sum, floor float64) (value, at float64, exceeds bool)
+// measure is a quantity of which each sum has a largest value along the member.
+type measure interface {
+	// bound returns a value that the sum does not exceed.
+	bound(sum Sum) float64
+	// largest returns the largest value and its place. It may stop and report
+	// false as soon as it knows that the value does not exceed floor.
+	largest(sum Sum, floor float64) (value, at float64, exceeds bool)
+}
 
 // rank returns the sums with the largest values, at most count, largest first.
-func rank(sums []Sum, count int, largest search) []Peak {
-	var best []Peak
+// The sum with the highest bound is looked at before all others: few remain to
+// be searched after it.
+func rank(sums []Sum, count int, m measure) []Peak {
+	if len(sums) == 0 || count == 0 {
+		return nil
+	}
+	bounds := make([]float64, len(sums))
+	promising := 0
 	for i, sum := range sums {
+		bounds[i] = m.bound(sum)
+		if Above(bounds[i], bounds[promising]) {
+			promising = i
+		}
+	}
+	var best []Peak
+	look := func(i int) {
 		floor := math.Inf(-1)
 		if len(best) == count {
 			floor = best[count-1].Value
 		}
-		value, at, exceeds := largest(sum, floor)
+		if !Above(bounds[i], floor) {
+			return
+		}
+		value, at, exceeds := m.largest(sums[i], floor)
 		if !exceeds {
-			continue
+			return
 		}
 		place := len(best)
-		for place > 0 && Above(value, best[place-1].Value) {
+		for place > 0 && (Above(value, best[place-1].Value) || !Above(best[place-1].Value, value) && i < best[place-1].Sum) {
 			place--
 		}
-		if place == count {
-			continue
+		best = slices.Insert(best, place, Peak{value, at, i})
+		best = best[:min(len(best), count)]
+	}
+	look(promising)
+	for i := range sums {
+		if i != promising {
+			look(i)
 		}
-		if len(best) < count {
-			best = append(best, Peak{})
-		}
-		copy(best[place+1:], best[place:])
-		best[place] = Peak{value, at, i}
 	}
 	return best
 }

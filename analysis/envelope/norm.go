@@ -11,13 +11,11 @@ import (
 func Largest(sums []Sum, count int, a, b *Path) []Peak {
 	switch {
 	case b == nil || b.Zero():
-		return rank(sums, count, a.largestSize)
+		return rank(sums, count, size{a})
 	case a.Zero():
-		return rank(sums, count, b.largestSize)
+		return rank(sums, count, size{b})
 	}
-	return rank(sums, count, func(sum Sum, floor float64) (float64, float64, bool) {
-		return largestNorm(sum, floor, a, b)
-	})
+	return rank(sums, count, norm{a, b})
 }
 
 // LargestSigned returns the sums in which the quantity is largest (smallest, if
@@ -27,9 +25,7 @@ func LargestSigned(sums []Sum, count int, p *Path, least bool) []Peak {
 	if least {
 		sign = -1
 	}
-	peaks := rank(sums, count, func(sum Sum, floor float64) (float64, float64, bool) {
-		return p.largestSigned(sum, floor, sign)
-	})
+	peaks := rank(sums, count, signed{p, sign})
 	for i := range peaks {
 		peaks[i].Value *= sign
 	}
@@ -53,33 +49,68 @@ func (b *best) reached(bound, floor float64) bool {
 	return !Above(bound, floor) || b.seen && !Above(bound, b.value)
 }
 
-func (p *Path) largestSigned(sum Sum, floor, sign float64) (value, at float64, exceeds bool) {
+// signed is the measure sign · p.
+type signed struct {
+	path *Path
+	sign float64
+}
+
+func (m signed) bound(sum Sum) float64 {
+	bound := math.Inf(-1)
+	for piece := range len(m.path.Breaks) - 1 {
+		c := m.path.controls(piece, sum)
+		bound = max(bound, m.boundOf(&c))
+	}
+	return bound
+}
+
+// boundOf is the largest of the Bernstein coefficients of a piece.
+func (m signed) boundOf(c *element.Polynomial) float64 {
+	bound := m.sign * c[0]
+	for k := 1; k <= m.path.degree; k++ {
+		bound = max(bound, m.sign*c[k])
+	}
+	return bound
+}
+
+func (m signed) largest(sum Sum, floor float64) (value, at float64, exceeds bool) {
+	p := m.path
 	var found best
 	for piece := range len(p.Breaks) - 1 {
 		from, length := p.Breaks[piece], p.Breaks[piece+1]-p.Breaks[piece]
 		c := p.controls(piece, sum)
-		bound := math.Inf(-1)
-		for k := 0; k <= max(p.degree, 0); k++ {
-			bound = max(bound, sign*c[k])
-		}
-		if found.reached(bound, floor) {
+		if found.reached(m.boundOf(&c), floor) {
 			continue
 		}
-		found.see(sign*c[0], from)
+		found.see(m.sign*c[0], from)
 		if p.degree > 1 {
 			course := p.course(piece, sum)
 			for _, s := range course.Derivative().Roots(length) {
-				found.see(sign*course.At(s), from+s)
+				found.see(m.sign*course.At(s), from+s)
 			}
 		}
-		found.see(sign*c[max(p.degree, 0)], from+length)
+		found.see(m.sign*c[max(p.degree, 0)], from+length)
 	}
 	return found.value, found.at, found.seen && Above(found.value, floor)
 }
 
-func (p *Path) largestSize(sum Sum, floor float64) (value, at float64, exceeds bool) {
-	up, atUp, upExceeds := p.largestSigned(sum, floor, 1)
-	down, atDown, downExceeds := p.largestSigned(sum, floor, -1)
+// size is the measure |p|.
+type size struct{ path *Path }
+
+func (m size) bound(sum Sum) float64 {
+	bound := 0.0
+	for piece := range len(m.path.Breaks) - 1 {
+		c := m.path.controls(piece, sum)
+		for k := 0; k <= m.path.degree; k++ {
+			bound = max(bound, math.Abs(c[k]))
+		}
+	}
+	return bound
+}
+
+func (m size) largest(sum Sum, floor float64) (value, at float64, exceeds bool) {
+	up, atUp, upExceeds := signed{m.path, 1}.largest(sum, floor)
+	down, atDown, downExceeds := signed{m.path, -1}.largest(sum, floor)
 	if downExceeds && (!upExceeds || further(down, atDown, up, atUp)) {
 		return down, atDown, true
 	}
@@ -92,40 +123,59 @@ func further(value, at, than, thanAt float64) bool {
 	return Above(value, than) || !Above(than, value) && at < thanAt
 }
 
-// largestNorm searches √(a² + b²): its stationary places are the roots of
-// a a′ + b b′.
-func largestNorm(sum Sum, floor float64, a, b *Path) (value, at float64, exceeds bool) {
+// norm is the measure √(a² + b²).
+type norm struct{ a, b *Path }
+
+// on returns both parts on a piece, as a stretch whose first part is zero.
+func (m norm) on(piece int, sum Sum) stretch {
+	return stretch{
+		from: m.a.Breaks[piece], to: m.a.Breaks[piece+1],
+		controls: [3]element.Polynomial{{}, m.a.raised(piece, sum, m.b.degree), m.b.raised(piece, sum, m.a.degree)},
+	}
+}
+
+func (m norm) degree() int { return max(m.a.degree, m.b.degree) }
+
+func (m norm) bound(sum Sum) float64 {
+	bound := 0.0
+	for piece := range len(m.a.Breaks) - 1 {
+		s := m.on(piece, sum)
+		bound = max(bound, s.bound(m.degree()))
+	}
+	return bound
+}
+
+// largest looks at the stationary places, the roots of a a′ + b b′, of those
+// pieces that closer bounds do not rule out.
+func (m norm) largest(sum Sum, floor float64) (value, at float64, exceeds bool) {
 	var found best
-	for piece := range len(a.Breaks) - 1 {
-		from, length := a.Breaks[piece], a.Breaks[piece+1]-a.Breaks[piece]
-		ca, cb := a.raised(piece, sum, b.degree), b.raised(piece, sum, a.degree)
-		degree := max(a.degree, b.degree)
-		bound := 0.0
-		for k := 0; k <= degree; k++ {
-			bound = max(bound, math.Hypot(ca[k], cb[k]))
-		}
-		if found.reached(bound, floor) {
+	for piece := range len(m.a.Breaks) - 1 {
+		s := m.on(piece, sum)
+		if found.reached(s.bound(m.degree()), floor) || found.reached(s.closerBound(m.degree()), floor) {
 			continue
 		}
-		pa, pb := a.course(piece, sum), b.course(piece, sum)
-		found.see(math.Hypot(pa[0], pb[0]), from)
-		for _, s := range normStationary(pa, pb, length) {
-			found.see(math.Hypot(pa.At(s), pb.At(s)), from+s)
+		pa, pb := m.a.course(piece, sum), m.b.course(piece, sum)
+		length := s.to - s.from
+		found.see(math.Hypot(pa[0], pb[0]), s.from)
+		stationary := normStationary(pa, pb, length)
+		for _, x := range stationary.at[:stationary.count] {
+			found.see(math.Hypot(pa.At(x), pb.At(x)), s.from+x)
 		}
-		found.see(math.Hypot(pa.At(length), pb.At(length)), from+length)
+		found.see(math.Hypot(pa.At(length), pb.At(length)), s.to)
 	}
 	return found.value, found.at, found.seen && Above(found.value, floor)
 }
 
 // normStationary returns the places in (0, length) where a² + b² is stationary.
-func normStationary(a, b element.Polynomial, length float64) []float64 {
+func normStationary(a, b element.Polynomial, length float64) places {
 	da, db := a.Derivative(), b.Derivative()
-	slope := make(polynomial, 2*len(a)-1)
+	var slope polynomial
 	for i := range a {
-		for j := range da {
-			slope[i+j] += a[i]*da[j] + b[i]*db[j]
+		for j := range len(da) - 1 { // the last coefficient of a derivative is zero
+			slope.c[i+j] += a[i]*da[j] + b[i]*db[j]
 		}
 	}
+	slope.trimmed()
 	return slope.roots(length)
 }
 

@@ -16,24 +16,13 @@ func LargestOffset(sums []Sum, count int, c, a, b *Path) []Peak {
 	case a.Zero():
 		return largestOfTwo(sums, count, c, b)
 	}
-	return rank(sums, count, func(sum Sum, floor float64) (float64, float64, bool) {
-		return largestOffset(sum, floor, [3]*Path{c, a, b})
-	})
+	return rank(sums, count, offset{c, a, b})
 }
 
 // largestOfTwo ranks by c + |a|, the larger of c + a and c − a.
 func largestOfTwo(sums []Sum, count int, c, a *Path) []Peak {
 	plus, minus := Blend([]float64{1, 1}, c, a), Blend([]float64{1, -1}, c, a)
-	return rank(sums, count, func(sum Sum, floor float64) (float64, float64, bool) {
-		v, at, ok := plus.largestSigned(sum, floor, 1)
-		if ok {
-			floor = v
-		}
-		if w, atW, better := minus.largestSigned(sum, floor, 1); better && (!ok || Above(w, v)) {
-			return w, atW, true
-		}
-		return v, at, ok
-	})
+	return LargestOf(count, rank(sums, count, signed{plus, 1}), rank(sums, count, signed{minus, 1}))
 }
 
 // stretch is a part of a piece with the Bernstein coefficients of c, a and b
@@ -50,6 +39,15 @@ func (s *stretch) bound(degree int) float64 {
 		bound = max(bound, s.value(k))
 	}
 	return bound
+}
+
+// closerBound is the bound of the quarters of the stretch, some sixteen times as
+// close to the value.
+func (s *stretch) closerBound(degree int) float64 {
+	left, right := s.halves(degree)
+	a, b := left.halves(degree)
+	c, d := right.halves(degree)
+	return max(a.bound(degree), b.bound(degree), c.bound(degree), d.bound(degree))
 }
 
 // value is that of the coefficients k; at 0 and the degree that of the ends.
@@ -73,21 +71,36 @@ func (s *stretch) halves(degree int) (left, right stretch) {
 	return left, right
 }
 
-// largestOffset halves what could still hold a larger value, until no more than
+// offset is the measure c + √(a² + b²).
+type offset [3]*Path
+
+func (m offset) degree() int { return max(m[0].degree, m[1].degree, m[2].degree) }
+
+func (m offset) on(piece int, sum Sum) stretch {
+	s := stretch{from: m[0].Breaks[piece], to: m[0].Breaks[piece+1]}
+	for i, p := range m {
+		s.controls[i] = p.raised(piece, sum, m.degree())
+	}
+	return s
+}
+
+func (m offset) bound(sum Sum) float64 {
+	bound := math.Inf(-1)
+	for piece := range len(m[0].Breaks) - 1 {
+		s := m.on(piece, sum)
+		bound = max(bound, s.bound(m.degree()))
+	}
+	return bound
+}
+
+// largest halves what could still hold a larger value, until no more than
 // rounding is left. The axial force may change along the piece, so that no
 // polynomial has the stationary places as its roots.
-func largestOffset(sum Sum, floor float64, paths [3]*Path) (value, at float64, exceeds bool) {
-	degree := 0
-	for _, p := range paths {
-		degree = max(degree, p.degree)
-	}
+func (m offset) largest(sum Sum, floor float64) (value, at float64, exceeds bool) {
+	degree := m.degree()
 	var found best
-	breaks := paths[0].Breaks
-	for piece := range len(breaks) - 1 {
-		whole := stretch{from: breaks[piece], to: breaks[piece+1]}
-		for i, p := range paths {
-			whole.controls[i] = p.raised(piece, sum, degree)
-		}
+	for piece := range len(m[0].Breaks) - 1 {
+		whole := m.on(piece, sum)
 		open := []stretch{whole}
 		for len(open) > 0 {
 			s := open[len(open)-1]
