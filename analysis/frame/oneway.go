@@ -1,19 +1,24 @@
 package frame
 
 import (
+	"cmp"
 	"context"
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"spanwright/lang/model"
 )
 
 // One-way parts are found by active sets: all act at first; what carries the
 // wrong way is taken out, what would carry the right way is put back, until
-// nothing changes. If a set comes back that was there before, only the worst
-// part changes from then on; if that goes in circles too, there is no answer
-// and it is said so.
+// nothing changes. Where that leaves a mechanism, parts that stop it are put back
+// (see standing). If a set comes back that was there before, the search starts
+// anew and changes only the worst part at a time, and then only the first one in
+// the order of the model, as in K. G. Murty, Note on a Bard-type scheme for
+// solving the complementarity problem, Opsearch 11 (1974). If that goes in circles
+// too, there is no answer and it is said so.
 
 // OneWayError says that no consistent set of one-way parts was found.
 type OneWayError struct {
@@ -116,17 +121,40 @@ func (o *oneWay) slackInWords(st status) string {
 	return text
 }
 
-// steps bounds the changes of the set of acting parts for one load.
-const steps = 200
+// choice picks the changes that are made out of those that are called for, the
+// worst first.
+type choice func(changes []change) []change
+
+func all(changes []change) []change   { return changes }
+func worst(changes []change) []change { return changes[:1] }
+func first(changes []change) []change {
+	return []change{slices.MinFunc(changes, func(a, b change) int {
+		return cmp.Or(cmp.Compare(a.member, b.member), cmp.Compare(a.hold, b.hold))
+	})}
+}
 
 // solve finds the state of a loading with its consistent set of parts.
 func (o *oneWay) solve(ctx context.Context, l loading) (*State, error) {
+	var circling *OneWayError
+	for _, choose := range []choice{all, worst, first} {
+		state, err := o.search(ctx, l, choose)
+		if !errors.As(err, &circling) {
+			return state, err
+		}
+	}
+	return nil, circling
+}
+
+// search changes the set of acting parts until it is consistent.
+func (o *oneWay) search(ctx context.Context, l loading, choose choice) (*State, error) {
 	st := status{slack: make([]bool, len(o.all.model.Members)), lifted: make([]bool, len(o.all.holds))}
 	seen := map[string]bool{}
-	careful := false
-	for range steps {
-		s, err := o.structure(ctx, st)
+	for {
+		s, err := o.standing(ctx, st, &l)
 		if err != nil {
+			return nil, err
+		}
+		if err := s.checkInactive(&l, "the load"); err != nil {
 			return nil, err
 		}
 		states, err := s.solveAll(ctx, []loading{l})
@@ -137,24 +165,29 @@ func (o *oneWay) solve(ctx context.Context, l loading) (*State, error) {
 		if len(changes) == 0 {
 			return states[0], nil
 		}
-		key := st.key()
-		if seen[key] {
-			if careful {
-				return nil, s.circling(changes)
-			}
-			careful, seen = true, map[string]bool{}
+		key := s.status.key()
+		if seen[key] || len(seen) > o.steps() {
+			return nil, s.circling(changes)
 		}
 		seen[key] = true
-		if careful {
-			changes = changes[:1]
+		st = s.status.changed(choose(changes))
+	}
+}
+
+// steps bounds the changes of the set of acting parts for one load.
+func (o *oneWay) steps() int {
+	parts := 0
+	for i := range o.all.model.Members {
+		if o.all.model.Members[i].Sense != model.BothWays {
+			parts++
 		}
-		st = st.changed(changes)
 	}
-	s, err := o.structure(ctx, st)
-	if err != nil {
-		return nil, err
+	for i := range o.all.holds {
+		if o.all.holds[i].oneWay {
+			parts++
+		}
 	}
-	return nil, s.circling(nil)
+	return 50 + 4*parts
 }
 
 func (s *Structure) circling(changes []change) error {

@@ -74,6 +74,17 @@ func (s *Structure) spansOn(segment int, l *loading) []element.SpanLoad {
 
 // rightSide fills the forces on the unknowns that a loading comes to.
 func (s *Structure) rightSide(l *loading, out []float64) {
+	loads := s.onBodies(l)
+	for b := range s.bodies {
+		for i := range s.bodies[b].basis {
+			out[s.start[b]+i] = dot6(&s.bodies[b].basis[i], &loads[b])
+		}
+	}
+}
+
+// onBodies returns the forces at the reference points of the bodies that a
+// loading comes to, prescribed movements included.
+func (s *Structure) onBodies(l *loading) []vector6 {
 	onBodies := make([]vector6, len(s.bodies))
 	add := func(b int, f vector6, sign float64) {
 		for k := range f {
@@ -109,11 +120,7 @@ func (s *Structure) rightSide(l *loading, out []float64) {
 			add(h.body, row, 1)
 		}
 	}
-	for b := range s.bodies {
-		for i := range s.bodies[b].basis {
-			out[s.start[b]+i] = dot6(&s.bodies[b].basis[i], &onBodies[b])
-		}
-	}
+	return onBodies
 }
 
 // movedSupports returns the movement q₀ of each body that the supports

@@ -3,7 +3,6 @@ package frame
 import (
 	"context"
 	"errors"
-	"fmt"
 
 	"spanwright/lang/model"
 )
@@ -35,8 +34,10 @@ func Prepare(ctx context.Context, m *model.Model, previous *Solver) (*Solver, er
 		}
 	}
 	solver := &Solver{structure: s, loadings: s.loadings()}
-	if err := s.checkInactive(solver.loadings); err != nil {
-		return nil, err
+	for i := range solver.loadings {
+		if err := s.checkInactive(&solver.loadings[i], "case "+m.Cases[i].Name); err != nil {
+			return nil, err
+		}
 	}
 	if s.hasOneWay() {
 		solver.oneWay = newOneWay(s)
@@ -100,16 +101,15 @@ func (v *Solver) Combination(ctx context.Context, factors []model.Factor) (*Stat
 }
 
 // checkInactive refuses loads on movements that nothing resists and that were
-// taken out: a moment on a hinge, a force on a node without members.
-func (s *Structure) checkInactive(list []loading) error {
-	for i := range list {
-		for node, f := range list[i].nodes {
-			if f == (vector6{}) {
-				continue
-			}
-			if left := s.unheld(node, f); left >= 0 {
-				return s.looseLoad(node, left, s.model.Cases[i].Name)
-			}
+// taken out: a moment on a hinge, a force on a node without members. who is what
+// the message calls the load.
+func (s *Structure) checkInactive(l *loading, who string) error {
+	for node, f := range l.nodes {
+		if f == (vector6{}) {
+			continue
+		}
+		if left := s.unheld(node, f); left >= 0 {
+			return s.looseLoad(node, left, who)
 		}
 	}
 	return nil
@@ -136,11 +136,11 @@ func (s *Structure) unheld(node int, f vector6) int {
 }
 
 // looseLoad says that nothing takes up a load on a node.
-func (s *Structure) looseLoad(node, freedom int, loadCase string) error {
+func (s *Structure) looseLoad(node, freedom int, who string) error {
 	shape := make([][6]float64, len(s.model.Nodes))
 	shape[node][freedom] = 1
 	return &MechanismError{
 		structure: s, Shapes: [][][6]float64{shape}, Moves: []NodeFreedom{{node, freedom}}, Remedy: []NodeFreedom{{node, freedom}},
-		Load: fmt.Sprintf("case %s loads it", loadCase),
+		Load: who + " drives it",
 	}
 }
