@@ -42,7 +42,8 @@ func (p *Path) Extremes(sums []Sum) (most, least Peak) {
 			}
 			if inside {
 				course := p.course(piece, sum)
-				for _, s := range course.Derivative().Roots(length) {
+				stationary := stationary(course, length)
+				for _, s := range stationary.at[:stationary.count] {
 					see(course.At(s), from+s)
 				}
 			}

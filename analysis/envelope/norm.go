@@ -85,7 +85,8 @@ func (m signed) largest(sum Sum, floor float64) (value, at float64, exceeds bool
 		found.see(m.sign*c[0], from)
 		if p.degree > 1 {
 			course := p.course(piece, sum)
-			for _, s := range course.Derivative().Roots(length) {
+			stationary := stationary(course, length)
+			for _, s := range stationary.at[:stationary.count] {
 				found.see(m.sign*course.At(s), from+s)
 			}
 		}

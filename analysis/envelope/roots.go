@@ -1,6 +1,10 @@
 package envelope
 
-import "math"
+import (
+	"math"
+
+	"spanwright/analysis/element"
+)
 
 // maxDegree is that of the slope of a² + b² for two Polynomials.
 const maxDegree = 9
@@ -111,4 +115,14 @@ func (p *polynomial) between(d *polynomial, left, right float64, rising bool) fl
 		s, lastStep = next, math.Abs(step)
 	}
 	return s
+}
+
+// stationary returns the places in (0, length) where a course is stationary.
+func stationary(course element.Polynomial, length float64) places {
+	var slope polynomial
+	for i := 1; i < len(course); i++ {
+		slope.c[i-1] = float64(i) * course[i]
+	}
+	slope.trimmed()
+	return slope.roots(length)
 }
