@@ -25,7 +25,7 @@ var floors = [][]string{
 	{"analysis/limit"},
 	{"analysis"},
 	{"analysis/diagram"},
-	{"compare"},
+	{"analysis/compare"},
 	{"lsp/protocol"},
 	{"lsp/rpc"},
 	{"lsp/workspace"},
