@@ -32,6 +32,7 @@ var floors = [][]string{
 	{"lsp/feature"},
 	{"lsp"},
 	{"lsp/lsptest"},
+	{"editors"},
 	{"cmd/spanwright"},
 }
 
