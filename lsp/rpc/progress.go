@@ -5,16 +5,11 @@ import (
 	"encoding/json"
 	"fmt"
 	"sync"
-	"time"
 
 	lsp "github.com/tliron/glsp/protocol_3_16"
 
 	"spanwright/lsp/protocol"
 )
-
-// progressDelay is how long work runs before the user is shown that it does:
-// what is over sooner would only flicker.
-const progressDelay = time.Second
 
 // progressTable holds what is shown to the user and can be cancelled.
 type progressTable struct {
@@ -60,7 +55,7 @@ func (t *progressTable) cancel(params json.RawMessage) {
 type Progress struct {
 	connection *Connection
 	token      lsp.ProgressToken
-	name       string
+	cancel     context.CancelFunc
 
 	mu      sync.Mutex
 	shown   bool
@@ -70,25 +65,16 @@ type Progress struct {
 }
 
 // StartProgress announces work that the user may cancel: the returned context
-// ends then. The client shows it once it has lasted a second. Call it only for
-// a client that has announced window.workDoneProgress, and call End whatever
-// happens.
+// ends then. Call it only for a client that has announced
+// window.workDoneProgress, and call End whatever happens.
 func (c *Connection) StartProgress(ctx context.Context, title string) (context.Context, *Progress) {
 	ctx, cancel := context.WithCancel(ctx)
 	name := c.progress.add(cancel)
-	p := &Progress{connection: c, token: lsp.ProgressToken{Value: name}, name: name, end: make(chan struct{})}
+	p := &Progress{connection: c, token: lsp.ProgressToken{Value: name}, cancel: cancel, end: make(chan struct{})}
 	context.AfterFunc(ctx, func() { c.progress.remove(name) })
 	c.Go(func(background context.Context) {
 		defer cancel()
-		timer := time.NewTimer(progressDelay)
-		defer timer.Stop()
-		select {
-		case <-timer.C:
-			p.show(background, title)
-		case <-background.Done():
-		case <-p.end:
-			return
-		}
+		p.show(background, title)
 		select {
 		case <-background.Done():
 		case <-p.end:
@@ -143,6 +129,7 @@ func (p *Progress) End(message string) {
 	}
 	p.ended = true
 	close(p.end)
+	p.cancel()
 	if p.shown {
 		p.notify(lsp.WorkDoneProgressEnd{Kind: "end", Message: optional(message)})
 	}
