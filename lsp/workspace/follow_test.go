@@ -46,10 +46,10 @@ func TestFollowKeepsWhatIsApart(t *testing.T) {
 	d := &Document{Path: "/f", File: file, Tree: syntax.Parse(file)}
 	d = d.followed(1, []Replacement{{From: source.Point{}, To: source.Point{}, Text: "zero\n"}, {From: source.Point{Line: 3}, To: source.Point{Line: 4}, Text: ""}}, source.UTF16)
 	assert.Equal(t, "zero\none\ntwo\n", d.File.Text)
-	moved, ok := d.follow(source.Span{Start: 0, End: 3}, 0)
+	_, ok := d.follow(source.Span{Start: 0, End: 3}, 0)
 	assert.False(t, ok, "edits of one message are taken together")
 	d2 := (&Document{Path: "/f", File: file, Tree: syntax.Parse(file)}).followed(1, []Replacement{{Text: "zero\n"}}, source.UTF16)
-	moved, ok = d2.follow(source.Span{Start: 4, End: 7}, 0)
+	moved, ok := d2.follow(source.Span{Start: 4, End: 7}, 0)
 	assert.True(t, ok)
 	assert.Equal(t, "two", d2.File.Slice(moved))
 }
