@@ -1,0 +1,39 @@
+package lsp
+
+import (
+	lsp "github.com/tliron/glsp/protocol_3_16"
+
+	"spanwright/lsp/protocol"
+)
+
+// capabilities returns what the server can do for its client.
+func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
+	yes := true
+	c := protocol.ServerCapabilities{
+		PositionEncoding: encoding,
+		ServerCapabilities: lsp.ServerCapabilities{
+			TextDocumentSync: lsp.TextDocumentSyncOptions{
+				OpenClose: &yes,
+				Change:    pointer(lsp.TextDocumentSyncKindIncremental),
+				Save:      lsp.SaveOptions{},
+			},
+			DocumentFormattingProvider:      true,
+			DocumentRangeFormattingProvider: protocol.DocumentRangeFormattingOptions{RangesSupport: s.client.RangesFormatting},
+			DocumentOnTypeFormattingProvider: &lsp.DocumentOnTypeFormattingOptions{
+				FirstTriggerCharacter: "\n", MoreTriggerCharacter: []string{"}"},
+			},
+			Workspace: &lsp.ServerCapabilitiesWorkspace{
+				WorkspaceFolders: &lsp.WorkspaceFoldersServerCapabilities{
+					Supported: &yes, ChangeNotifications: &lsp.BoolOrString{Value: true},
+				},
+			},
+		},
+	}
+	// Only a client that can be asked to pull again learns of a finished solve.
+	if s.client.PullDiagnostics && s.client.RefreshDiagnostics {
+		c.DiagnosticProvider = &protocol.DiagnosticOptions{Identifier: section, InterFileDependencies: true}
+	}
+	return c
+}
+
+func pointer[T any](value T) *T { return &value }

@@ -1,0 +1,38 @@
+package lsp
+
+import (
+	"github.com/tliron/glsp"
+	lsp "github.com/tliron/glsp/protocol_3_16"
+
+	"spanwright/lsp/protocol"
+	"spanwright/lsp/rpc"
+)
+
+// methods returns the methods that glsp does not know, or decodes with losses.
+func (s *server) methods() map[string]rpc.Method {
+	return map[string]rpc.Method{
+		string(lsp.MethodTextDocumentDidChange):     s.didChange,
+		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
+		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
+	}
+}
+
+// handler returns the methods that glsp dispatches.
+func (s *server) handler() *lsp.Handler {
+	return &lsp.Handler{
+		Initialized: s.initialized,
+		SetTrace:    func(*glsp.Context, *lsp.SetTraceParams) error { return nil },
+
+		WorkspaceDidChangeWorkspaceFolders: s.didChangeWorkspaceFolders,
+		WorkspaceDidChangeConfiguration:    s.didChangeConfiguration,
+		WorkspaceDidChangeWatchedFiles:     s.didChangeWatchedFiles,
+
+		TextDocumentDidOpen:  s.didOpen,
+		TextDocumentDidSave:  s.didSave,
+		TextDocumentDidClose: s.didClose,
+
+		TextDocumentFormatting:       s.formatting,
+		TextDocumentRangeFormatting:  s.rangeFormatting,
+		TextDocumentOnTypeFormatting: s.onTypeFormatting,
+	}
+}
