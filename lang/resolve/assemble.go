@@ -26,6 +26,7 @@ type assembly struct {
 	unitCounts  [64]int
 	nodeUnits   [64]int
 	told        map[string]bool // properties whose lack has been reported
+	byHand      map[string]int  // families that only names such as ULS.a make, by name
 	turns       []float64       // by section: the angle to its principal axes
 }
 
@@ -296,7 +297,7 @@ func (a *assembly) buildActions() {
 		f.index = len(m.Families)
 		m.Families = append(m.Families, family)
 	}
-	written := map[string]int{}
+	a.byHand = map[string]int{}
 	for _, f := range a.kinds[syntax.CombinationKind] {
 		r := f.outcome.result.(*combinationResult)
 		c := model.Combination{Name: f.full(), Family: -1, Origin: a.origin(f)}
@@ -313,7 +314,7 @@ func (a *assembly) buildActions() {
 			continue
 		}
 		slices.SortFunc(c.Factors, func(x, y model.Factor) int { return x.Case - y.Case })
-		c.Family = a.familyOf(r, c, written)
+		c.Family = a.familyOf(r, c)
 		f.index = len(m.Combinations)
 		m.Combinations = append(m.Combinations, c)
 	}
@@ -330,7 +331,7 @@ func (a *assembly) buildActions() {
 
 // familyOf returns the family of a combination named such as "ULS.a". Where no
 // family line declares it, the first such name makes one by hand.
-func (a *assembly) familyOf(r *combinationResult, c model.Combination, written map[string]int) int {
+func (a *assembly) familyOf(r *combinationResult, c model.Combination) int {
 	name, _, dotted := strings.Cut(c.Name, ".")
 	if !dotted {
 		return -1
@@ -340,12 +341,12 @@ func (a *assembly) familyOf(r *combinationResult, c model.Combination, written m
 			return w.index
 		}
 	}
-	if i, ok := written[name]; ok {
+	if i, ok := a.byHand[name]; ok {
 		return i
 	}
-	written[name] = len(a.model.Families)
+	a.byHand[name] = len(a.model.Families)
 	a.model.Families = append(a.model.Families, model.Family{Name: name, Code: model.Written, Origin: c.Origin})
-	return written[name]
+	return a.byHand[name]
 }
 
 // buildLoads puts the loads into their cases.
@@ -489,6 +490,11 @@ func (a *assembly) buildLimits() {
 			default:
 				limit.Under.Families = append(limit.Under.Families, i)
 			}
+		}
+		for _, name := range r.byHand {
+			i, known := a.byHand[name]
+			whole = whole && known
+			limit.Under.Families = append(limit.Under.Families, i)
 		}
 		limit.Under.Generated = r.generated
 		if !whole {

@@ -23,6 +23,7 @@ type limitResult struct {
 	usesYield   bool
 	atMost      bool
 	under       []*symbol
+	byHand      []string // families that no line declares, if they are any
 	generated   []string // names of combinations that a code asks for
 }
 
@@ -232,6 +233,9 @@ func sample(length, yield float64) map[string]value {
 	}
 }
 
+// actionWanted is what a limit is checked in.
+const actionWanted = "case, combination or family"
+
 // under finds the cases, combinations and families of a limit.
 func (e *evaluation) under(tree *syntax.LimitStatement, m measure, r *limitResult) bool {
 	if m.measure == model.Frequency {
@@ -253,8 +257,10 @@ func (e *evaluation) under(tree *syntax.LimitStatement, m measure, r *limitResul
 				r.generated = append(r.generated, n.Text)
 				continue
 			}
-			e.unknown(Actions, "case, combination or family", n.Text, n.Span())
-			ok = false
+			// Names such as ULS.a make a family that no line declares; whether there
+			// are any shows when the model is put together.
+			e.unknown(Actions, actionWanted, n.Text, n.Span())
+			r.byHand = append(r.byHand, n.Text)
 			continue
 		}
 		r.under = append(r.under, w.name)

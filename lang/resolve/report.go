@@ -74,6 +74,11 @@ func (a *assembly) report(r *Result) {
 		}
 		for i := range f.outcome.findings {
 			found := &f.outcome.findings[i]
+			if u := found.unknown; u != nil && u.want == actionWanted {
+				if _, known := a.byHand[u.name]; known {
+					continue
+				}
+			}
 			if f.place != nil {
 				// The same mistake in a part shows in each of its places.
 				key := fmt.Sprint(found.Name, f.sheet.path, f.sheet.tree.Units[f.unit].Start+found.Subject.Start)
