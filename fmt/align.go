@@ -1,11 +1,6 @@
 package format
 
-import (
-	"strings"
-	"unicode/utf8"
-
-	"spanwright/lang/syntax"
-)
+import "spanwright/lang/syntax"
 
 const (
 	// step is what the widths of columns are rounded up to, so that most edits
@@ -16,77 +11,72 @@ const (
 	widest = 40
 )
 
-// align joins the cells of all rows, those of a paragraph in columns. A
-// paragraph is a run of statements of one kind with no blank line between;
-// comment lines do not end it.
-func align(rows []row) {
-	for start := 0; start < len(rows); {
-		if rows[start].raw || rows[start].blank || len(rows[start].cells) == 0 {
+// align lines up the cells and comments of the rows of each paragraph: a run of
+// statements of one kind with no blank line between; comment lines do not end
+// it.
+func (l *layout) align() {
+	for start := 0; start < len(l.rows); {
+		r := &l.rows[start]
+		if r.raw != "" || r.blank || r.cells == 0 {
 			start++
 			continue
 		}
-		members, end := paragraph(rows, start)
-		alignCells(members)
-		alignComments(members)
+		end := l.paragraph(start)
+		l.alignCells()
+		l.alignComments()
 		start = end
 	}
 }
 
-// paragraph returns the rows that line up with row start, and the index behind
-// the last one.
-func paragraph(rows []row, start int) ([]*row, int) {
-	first := &rows[start]
-	members := []*row{first}
-	if first.kind == syntax.UnknownKind {
-		return members, start + 1
-	}
+// paragraph finds the rows that line up with row start, and returns the index
+// behind the last one.
+func (l *layout) paragraph(start int) int {
+	first := &l.rows[start]
+	l.members = append(l.members[:0], first)
 	end := start + 1
-	for i := start + 1; i < len(rows); i++ {
-		r := &rows[i]
-		if r.blank || r.raw {
+	if first.kind == syntax.UnknownKind {
+		return end
+	}
+	for i := start + 1; i < len(l.rows); i++ {
+		r := &l.rows[i]
+		if r.blank || r.raw != "" {
 			break
 		}
-		if len(r.cells) == 0 {
+		if r.cells == 0 {
 			continue // a comment line
 		}
 		if r.kind != first.kind || r.depth != first.depth {
 			break
 		}
-		members = append(members, r)
+		l.members = append(l.members, r)
 		end = i + 1
 	}
-	return members, end
+	return end
 }
 
 // alignCells pads each column to its width; the last cell of a row is not
 // padded.
-func alignCells(members []*row) {
+func (l *layout) alignCells() {
 	columns := 0
-	for _, r := range members {
-		columns = max(columns, len(r.cells))
+	for _, r := range l.members {
+		columns = max(columns, r.cells)
 	}
-	for c := range columns {
+	for c := range columns - 1 {
 		width := 0
-		for _, r := range members {
-			if c < len(r.cells)-1 {
-				if w := utf8.RuneCountInString(r.cells[c]); w <= widest {
+		for _, r := range l.members {
+			if c < r.cells-1 {
+				if w := l.cells[r.first+c].width; w <= widest {
 					width = max(width, w)
 				}
 			}
 		}
-		if len(members) > 1 && !keywordColumn(members[0].kind, c) {
+		if len(l.members) > 1 && !keywordColumn(l.members[0].kind, c) {
 			width = roundUp(width+1) - 1
 		}
-		for _, r := range members {
-			if c >= len(r.cells) {
-				continue
-			}
-			if c > 0 {
-				r.text += " "
-			}
-			r.text += r.cells[c]
-			if c < len(r.cells)-1 {
-				r.text += strings.Repeat(" ", max(0, width-utf8.RuneCountInString(r.cells[c])))
+		for _, r := range l.members {
+			if c < r.cells-1 {
+				x := &l.cells[r.first+c]
+				x.pad = max(0, width-x.width)
 			}
 		}
 	}
@@ -100,23 +90,38 @@ func keywordColumn(kind syntax.Kind, column int) bool {
 
 // alignComments puts the comments behind the rows of a paragraph into one
 // column.
-func alignComments(members []*row) {
-	width := 0
-	for _, r := range members {
+func (l *layout) alignComments() {
+	width, any := 0, false
+	for _, r := range l.members {
 		if r.comment != "" {
-			if w := utf8.RuneCountInString(r.text); w <= 2*widest {
+			any = true
+			if w := l.widthOf(r); w <= 2*widest {
 				width = max(width, w)
 			}
 		}
 	}
-	if len(members) > 1 {
+	if !any {
+		return
+	}
+	if len(l.members) > 1 {
 		width = roundUp(width + 2)
 	} else {
 		width += 2
 	}
-	for _, r := range members {
-		r.commentGap = width - utf8.RuneCountInString(r.text)
+	for _, r := range l.members {
+		if r.comment != "" {
+			r.commentGap = width - l.widthOf(r)
+		}
 	}
+}
+
+// widthOf returns the width of a row's cells in characters.
+func (l *layout) widthOf(r *row) int {
+	width := max(0, r.cells-1) // a blank between each two
+	for _, c := range l.cellsOf(r) {
+		width += c.width + c.pad
+	}
+	return width
 }
 
 func roundUp(width int) int { return (width + step - 1) / step * step }

@@ -9,18 +9,13 @@ import (
 
 // File returns the text of a file in normal form. Files with CRLF line ends
 // keep them. A text that is in normal form comes back as it is.
-func File(file *source.File) string { return Tree(syntax.Parse(file)) }
+func File(file *source.File) string {
+	var patterns syntax.Patterns
+	return write(layOut(syntax.Outline(file), patterns.Of))
+}
 
 // Tree returns the normal form of a file that has been read.
-func Tree(tree *syntax.Tree) string {
-	rows := layOut(tree)
-	align(rows)
-	lineEnd := "\n"
-	if crlf(tree.File.Text) {
-		lineEnd = "\r\n"
-	}
-	return write(rows, lineEnd)
-}
+func Tree(tree *syntax.Tree) string { return write(layOut(tree, syntax.PatternOf)) }
 
 // crlf reports whether the first line of a text ends with "\r\n".
 func crlf(text string) bool {
@@ -28,37 +23,72 @@ func crlf(text string) bool {
 	return n > 0 && text[n-1] == '\r'
 }
 
-// indent is what one level of block is moved in by.
-const indent = "    "
+const (
+	// indent is what one level of block is moved in by.
+	indent = "    "
+	blanks = "                                                                "
+)
 
 // write puts rows together, with at most one blank line in a row, none at the
 // start, and one line end at the end.
-func write(rows []row, lineEnd string) string {
-	var out strings.Builder
+func write(l *layout) string {
+	l.align()
+	lineEnd := "\n"
+	if crlf(l.text) {
+		lineEnd = "\r\n"
+	}
+	out := make([]byte, 0, len(l.text)+len(l.text)/4)
 	gap := false
-	for i := range rows {
-		r := &rows[i]
+	for i := range l.rows {
+		r := &l.rows[i]
 		if r.blank {
-			gap = out.Len() > 0
+			gap = len(out) > 0
 			continue
 		}
 		if gap {
-			out.WriteString(lineEnd)
+			out = append(out, lineEnd...)
 			gap = false
 		}
-		if r.raw {
-			out.WriteString(r.text)
+		if r.raw != "" {
+			out = append(out, r.raw...)
 		} else {
-			line := strings.Repeat(indent, r.depth) + r.text
-			if r.comment != "" {
-				if r.text != "" {
-					line += strings.Repeat(" ", max(r.commentGap, 2))
-				}
-				line += r.comment
-			}
-			out.WriteString(strings.TrimRight(line, " \t"))
+			out = l.writeRow(out, r)
 		}
-		out.WriteString(lineEnd)
+		out = append(out, lineEnd...)
 	}
-	return out.String()
+	return string(out)
+}
+
+// writeRow adds one row that is laid out anew.
+func (l *layout) writeRow(out []byte, r *row) []byte {
+	for range r.depth {
+		out = append(out, indent...)
+	}
+	cells := l.cellsOf(r)
+	for c := range cells {
+		if c > 0 {
+			out = append(out, ' ')
+		}
+		out = append(out, l.spelled[cells[c].start:cells[c].end]...)
+		if c < len(cells)-1 {
+			out = pad(out, cells[c].pad)
+		}
+	}
+	if r.comment != "" {
+		if len(cells) > 0 {
+			out = pad(out, max(r.commentGap, 2))
+		}
+		out = append(out, r.comment...)
+	}
+	for len(out) > 0 && (out[len(out)-1] == ' ' || out[len(out)-1] == '\t') {
+		out = out[:len(out)-1]
+	}
+	return out
+}
+
+func pad(out []byte, n int) []byte {
+	for ; n > len(blanks); n -= len(blanks) {
+		out = append(out, blanks...)
+	}
+	return append(out, blanks[:n]...)
 }

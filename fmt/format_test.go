@@ -50,13 +50,15 @@ func TestTheCanonicalFileIsCanonical(t *testing.T) {
 // aside: what formatting must not change.
 func meaning(text string) []string {
 	var words []string
+	var l layout
 	tree := syntax.Parse(source.New("t", text))
 	for _, u := range tree.Units {
 		if u.Statement.Broken() {
 			words = append(words, u.Statement.Text)
 			continue
 		}
-		for _, p := range normal(u.Statement) {
+		tokens := syntax.Tokens(u.Statement.Text)
+		for _, p := range l.normal(statement{u.Statement, tokens, syntax.PatternOf(u.Statement, tokens).Unary}) {
 			words = append(words, p.text)
 		}
 	}
@@ -77,6 +79,7 @@ func remarks(text string) string {
 func check(t require.TestingT, text string) {
 	once := File(source.New("t", text))
 	require.Equal(t, once, File(source.New("t", once)), "not idempotent for %q", text)
+	require.Equal(t, once, Tree(syntax.Parse(source.New("t", text))), "patterns differ in %q", text)
 	require.Equal(t, meaning(text), meaning(once), "meaning changed of %q", text)
 	require.Equal(t, strings.ReplaceAll(remarks(text), "\n", " "), strings.ReplaceAll(remarks(once), "\n", " "), "comments lost of %q", text)
 	tree := syntax.Parse(source.New("t", text))

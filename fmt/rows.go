@@ -9,47 +9,79 @@ import (
 // row is one line of the output.
 type row struct {
 	blank bool
-	raw   bool // text is lines of the input, byte for byte
+	// raw are lines of the input, byte for byte.
+	raw   string
 	depth int
 
 	// kind is the kind of paragraph that the row can stand in; 0 for none.
 	kind syntax.Kind
-	// cells are the parts that line up with those of the rows around it; text is
-	// what they make, once aligned.
-	cells []string
-	text  string
+	// first and cells are the parts that line up with those of the rows around
+	// it: where they start in the layout, and how many.
+	first, cells int
 
 	comment    string
 	commentGap int
 }
 
-// layout walks through the file and makes rows.
-type layout struct {
-	tree  *syntax.Tree
-	text  string
-	at    int // everything before is in rows
-	depth int
-	rows  []row
-	off   bool // between "# format off" and "# format on"
+// cell is a part of a row.
+type cell struct {
+	start, end int // in layout.spelled
+	width      int // in characters
+	pad        int // blanks behind it
 }
 
+// layout walks through the file and makes rows.
+type layout struct {
+	tree    *syntax.Tree
+	text    string
+	pattern func(*syntax.Statement, []syntax.Token) syntax.Pattern
+	at      int // everything before is in rows
+	depth   int
+	rows    []row
+	off     bool // between "# format off" and "# format on"
+
+	spelled []byte // the text of all cells
+	cells   []cell
+	pieces  []piece // of the statement at hand
+	members []*row  // of the paragraph at hand
+}
+
+func (l *layout) cellsOf(r *row) []cell { return l.cells[r.first : r.first+r.cells] }
+
 // layOut returns the rows of a file.
-func layOut(tree *syntax.Tree) []row {
-	l := &layout{tree: tree, text: tree.File.Text}
+func layOut(tree *syntax.Tree, pattern func(*syntax.Statement, []syntax.Token) syntax.Pattern) *layout {
+	l := &layout{tree: tree, text: tree.File.Text, pattern: pattern, rows: make([]row, 0, tree.File.Lines()+1)}
+	var statements []statement
 	for i := 0; i < len(tree.Units); {
 		l.trivia(tree.Units[i].Start)
 		n := l.cluster(i)
-		if l.off || l.mustStay(i, n) {
+		statements = statements[:0]
+		stays := l.off
+		for j := i; j < n && !stays; j++ {
+			s := tree.Units[j].Statement
+			tokens := syntax.Tokens(s.Text)
+			pattern := l.pattern(s, tokens)
+			statements = append(statements, statement{s, tokens, pattern.Unary})
+			stays = pattern.Broken
+		}
+		if stays {
 			l.keep(i, n)
 		} else {
 			for j := i; j < n; j++ {
-				l.statement(j)
+				l.statement(j, statements[j-i])
 			}
 		}
 		i = n
 	}
 	l.trivia(len(l.text))
-	return l.rows
+	return l
+}
+
+// statement is one that is laid out anew.
+type statement struct {
+	*syntax.Statement
+	tokens []syntax.Token
+	unary  []int // indices of tokens that are signs of one operand
 }
 
 // cluster returns the index behind the last unit that shares a line with unit
@@ -62,21 +94,11 @@ func (l *layout) cluster(i int) int {
 	return end
 }
 
-// mustStay reports whether one of the units i … n−1 cannot be read.
-func (l *layout) mustStay(i, n int) bool {
-	for _, u := range l.tree.Units[i:n] {
-		if u.Statement.Broken() {
-			return true
-		}
-	}
-	return false
-}
-
 // keep copies the lines of units i … n−1 as they are, their line ends included.
 func (l *layout) keep(i, n int) {
 	file := l.tree.File
 	first, last := file.LineAt(l.tree.Units[i].Start), file.LineAt(l.tree.Units[n-1].End)
-	l.rows = append(l.rows, row{raw: true, text: l.text[file.LineStart(first):file.LineEnd(last)]})
+	l.rows = append(l.rows, row{raw: l.text[file.LineStart(first):file.LineEnd(last)]})
 	for j := i; j < n; j++ {
 		l.block(j)
 	}
@@ -153,7 +175,7 @@ func (l *layout) commentRow(line int, content string) {
 
 func (l *layout) rawLine(line int) {
 	file := l.tree.File
-	l.rows = append(l.rows, row{raw: true, text: l.text[file.LineStart(line):file.LineEnd(line)]})
+	l.rows = append(l.rows, row{raw: l.text[file.LineStart(line):file.LineEnd(line)]})
 }
 
 // directive returns "off" or "on" for the comments that switch the formatter.
@@ -166,24 +188,14 @@ func directive(comment string) string {
 }
 
 // statement adds the rows of one statement with the comment behind it.
-func (l *layout) statement(i int) {
+func (l *layout) statement(i int, s statement) {
 	u := &l.tree.Units[i]
-	if u.Statement.Kind == syntax.CloseKind {
+	if s.Kind == syntax.CloseKind {
 		l.depth = max(0, depthOf(u.Block)-1)
 	} else {
 		l.depth = depthOf(u.Block)
 	}
-	depth := l.depth
-	lines := spaced(u.Statement)
-	for n, line := range lines {
-		r := row{depth: depth, cells: line.cells, comment: line.comment}
-		if n == 0 {
-			r.kind = paragraphKind(u.Statement.Kind)
-		} else if !line.closes {
-			r.depth++
-		}
-		l.rows = append(l.rows, r)
-	}
+	l.spell(s)
 	l.at = u.End
 	// A comment behind the last token belongs to its line.
 	file := l.tree.File

@@ -1,18 +1,13 @@
 package format
 
 import (
+	"slices"
 	"strings"
+	"unicode/utf8"
 
 	"spanwright/lang/quantity"
 	"spanwright/lang/syntax"
 )
-
-// statementLine is one line of a statement in its normal spelling.
-type statementLine struct {
-	cells   []string
-	comment string
-	closes  bool // begins with a closing bracket
-}
 
 // piece is a token in its normal spelling.
 type piece struct {
@@ -27,17 +22,16 @@ type piece struct {
 	tight      bool   // a "*" between two units
 }
 
-// spaced returns the lines of a statement with its tokens in normal spelling
-// and the blanks between them, cut into cells that can line up.
-func spaced(s *syntax.Statement) []statementLine {
-	pieces := normal(s)
-	var lines []statementLine
-	var cell strings.Builder
-	current := statementLine{}
+// spell adds the rows of a statement: its tokens in normal spelling with the
+// blanks between them, cut into cells that can line up.
+func (l *layout) spell(s statement) {
+	pieces := l.normal(s)
+	r := row{depth: l.depth, kind: paragraphKind(s.Kind), first: len(l.cells)}
+	start := len(l.spelled)
 	flush := func() {
-		if cell.Len() > 0 {
-			current.cells = append(current.cells, cell.String())
-			cell.Reset()
+		if end := len(l.spelled); end > start {
+			l.cells = append(l.cells, cell{start: start, end: end, width: utf8.RuneCount(l.spelled[start:end])})
+			start = end
 		}
 	}
 	for i := range pieces {
@@ -45,20 +39,25 @@ func spaced(s *syntax.Statement) []statementLine {
 		switch {
 		case p.startsLine:
 			flush()
-			lines = append(lines, current)
-			current = statementLine{closes: p.text == ")" || p.text == "}"}
-		case len(lines) == 0 && cellStarts(s.Kind, pieces, i):
+			r.cells = len(l.cells) - r.first
+			l.rows = append(l.rows, r)
+			r = row{depth: l.depth + 1, first: len(l.cells)}
+			if p.text == ")" || p.text == "}" {
+				r.depth--
+			}
+		case r.kind != 0 && cellStarts(s.Kind, pieces, i):
 			flush()
 		case i > 0 && space(&pieces[i-1], p):
-			cell.WriteByte(' ')
+			l.spelled = append(l.spelled, ' ')
 		}
-		cell.WriteString(p.text)
+		l.spelled = append(l.spelled, p.text...)
 		if p.comment != "" {
-			current.comment = p.comment
+			r.comment = p.comment
 		}
 	}
 	flush()
-	return append(lines, current)
+	r.cells = len(l.cells) - r.first
+	l.rows = append(l.rows, r)
 }
 
 // cellStarts reports whether a piece begins a cell: the "=", each "->" and the
@@ -77,19 +76,11 @@ func cellStarts(kind syntax.Kind, pieces []piece, i int) bool {
 }
 
 // normal returns the tokens of a statement that mean something, in their normal
-// spelling.
-func normal(s *syntax.Statement) []piece {
-	unary := map[int]bool{}
-	s.Expressions(func(e *syntax.Expression) {
-		syntax.Walk(e.Root, func(n syntax.Node) {
-			if u, ok := n.(*syntax.UnaryNode); ok {
-				unary[u.Span.Start] = true
-			}
-		})
-	})
-	var pieces []piece
+// spelling. They are good until the next call.
+func (l *layout) normal(s statement) []piece {
+	pieces := l.pieces[:0]
 	glued, startsLine := true, false
-	for _, t := range syntax.Tokens(s.Text) {
+	for i, t := range s.tokens {
 		text := t.In(s.Text)
 		switch t.Kind {
 		case syntax.Blank:
@@ -105,11 +96,14 @@ func normal(s *syntax.Statement) []piece {
 			continue
 		}
 		p := piece{text: spelling(t.Kind, text), kind: t.Kind, glued: glued, startsLine: startsLine}
-		p.unary = unary[int(t.Start)] || (p.text == "-" && len(pieces) > 0 && reserved(&pieces[len(pieces)-1]))
+		if p.text == "-" || p.text == "+" {
+			p.unary = slices.Contains(s.unary, i) || (p.text == "-" && len(pieces) > 0 && reserved(&pieces[len(pieces)-1]))
+		}
 		p.call = p.text == "(" && len(pieces) > 0 && calls(s.Kind, pieces, glued)
 		pieces = append(pieces, p)
 		glued, startsLine = true, false
 	}
+	l.pieces = pieces
 	pieces = joinUnits(pieces)
 	markOperators(pieces)
 	return pieces
@@ -147,6 +141,9 @@ func calls(kind syntax.Kind, pieces []piece, glued bool) bool {
 func spelling(kind syntax.TokenKind, text string) string {
 	switch kind {
 	case syntax.Number:
+		if strings.IndexByte(text, 'e') < 0 && strings.IndexByte(text, 'E') < 0 {
+			return text
+		}
 		mantissa, exponent, has := strings.Cut(strings.ToLower(text), "e")
 		if has {
 			return mantissa + "e" + strings.TrimPrefix(exponent, "+")
@@ -175,15 +172,19 @@ func spelling(kind syntax.TokenKind, text string) string {
 // joinUnits writes units in their normal form: "m^2" as m2, "kN*m" and "kN.m"
 // as kNm.
 func joinUnits(pieces []piece) []piece {
-	var out []piece
+	out := pieces[:0] // it never gets ahead of what is read
 	for i := 0; i < len(pieces); i++ {
 		p := pieces[i]
+		if p.kind != syntax.Word {
+			out = append(out, p)
+			continue
+		}
 		if unit(p.text) && i+2 < len(pieces) && pieces[i+1].text == "^" && pieces[i+1].glued && pieces[i+2].glued && unit(p.text+pieces[i+2].text) {
 			p.text += pieces[i+2].text
 			p.comment = pieces[i+2].comment
 			i += 2
 		}
-		if strings.Contains(p.text, ".") && p.kind == syntax.Word {
+		if strings.Contains(p.text, ".") {
 			p.text = dotted(p.text)
 		}
 		// a/kN*m is (a/kN)·m: there the product must stay.

@@ -141,6 +141,9 @@ func UnitSymbol(word string) bool {
 // NormalUnit returns a unit's normal spelling: "mm²" becomes "mm2". A word that
 // is no unit comes back as it is.
 func NormalUnit(word string) string {
+	if ascii(word) {
+		return word
+	}
 	plain := make([]rune, 0, len(word))
 	for _, r := range word {
 		switch r {
@@ -161,6 +164,16 @@ func NormalUnit(word string) string {
 		return string(plain)
 	}
 	return word
+}
+
+// ascii reports whether a text has no character beyond ASCII.
+func ascii(text string) bool {
+	for i := range len(text) {
+		if text[i] >= 0x80 {
+			return false
+		}
+	}
+	return true
 }
 
 // ends reports whether a word ends an expression: it joins, so a number before
