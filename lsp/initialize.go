@@ -72,4 +72,3 @@ func (s *server) initialized(*glsp.Context, *lsp.InitializedParams) error {
 	}
 	return nil
 }
-

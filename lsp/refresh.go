@@ -96,4 +96,3 @@ func (s *server) showSolve(model string, cancel func()) (ended func()) {
 		progress.End("")
 	}
 }
-

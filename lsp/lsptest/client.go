@@ -19,7 +19,7 @@ import (
 )
 
 // Patience is how long anything is waited for.
-const Patience = 30 * time.Second
+const Patience = 15 * time.Second
 
 // Serve runs a server on one end of a connection and returns its exit status.
 type Serve func(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logger) int

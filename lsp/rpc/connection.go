@@ -63,7 +63,7 @@ func Serve(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logger, open 
 	c.stream.beforeEnd = c.drain
 	c.service = open(c)
 	ready := make(chan struct{})
-	c.conn = jsonrpc2.NewConn(ctx, c.stream, &readLoop{c, ready}, jsonrpc2.SetLogger(printer{log}))
+	c.conn = jsonrpc2.NewConn(ctx, c.stream, &readLoop{Connection: c, ready: ready}, jsonrpc2.SetLogger(printer{log}))
 	close(ready)
 
 	<-c.conn.DisconnectNotify()

@@ -29,11 +29,16 @@ type readLoop struct {
 	*Connection
 	// ready is closed when the connection is set up.
 	ready <-chan struct{}
+	// exited is set by exit; what comes behind it is not looked at.
+	exited bool
 }
 
 // Handle takes one request or notification.
 func (l *readLoop) Handle(context.Context, *jsonrpc2.Conn, *jsonrpc2.Request) {
 	<-l.ready
+	if l.exited {
+		return
+	}
 	m := l.stream.current
 	r := &Request{Context: l.ctx, ID: m.id, Method: m.method, Params: m.Params}
 	if r.ID == "" {
@@ -48,8 +53,13 @@ func (l *readLoop) Handle(context.Context, *jsonrpc2.Conn, *jsonrpc2.Request) {
 func (l *readLoop) notified(r *Request) {
 	switch r.Method {
 	case lsp.MethodExit:
-		l.drain()
-		l.conn.Close()
+		l.exited = true
+		// Beside the read loop, which goes on reading: a client that writes
+		// something more before it reads the last answers must not be stuck.
+		go func() {
+			l.drain()
+			l.conn.Close()
+		}()
 		return
 	case lsp.MethodCancelRequest:
 		l.cancelled(r)
