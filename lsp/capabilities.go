@@ -15,7 +15,6 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 			TextDocumentSync: lsp.TextDocumentSyncOptions{
 				OpenClose: &yes,
 				Change:    pointer(lsp.TextDocumentSyncKindIncremental),
-				Save:      lsp.SaveOptions{},
 			},
 			DocumentFormattingProvider:      true,
 			DocumentRangeFormattingProvider: protocol.DocumentRangeFormattingOptions{RangesSupport: s.client.RangesFormatting},

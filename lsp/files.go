@@ -12,11 +12,14 @@ import (
 // extension is that of model files; no other file is looked at.
 const extension = ".span"
 
-// didChangeWatchedFiles takes news of files on disk.
+// didChangeWatchedFiles takes news of files on disk. Those that are open are
+// passed over: their buffers count, and every save of one would set off a solve.
 func (s *server) didChangeWatchedFiles(_ *glsp.Context, params *lsp.DidChangeWatchedFilesParams) error {
+	snapshot := s.workspace.Snapshot()
 	var paths []string
 	for _, change := range params.Changes {
-		if p := pathOf(change.URI); path.Ext(p) == extension {
+		p := pathOf(change.URI)
+		if _, open := snapshot.Document(p); !open && path.Ext(p) == extension {
 			paths = append(paths, p)
 		}
 	}

@@ -28,7 +28,6 @@ func (s *server) handler() *lsp.Handler {
 		WorkspaceDidChangeWatchedFiles:     s.didChangeWatchedFiles,
 
 		TextDocumentDidOpen:  s.didOpen,
-		TextDocumentDidSave:  s.didSave,
 		TextDocumentDidClose: s.didClose,
 
 		TextDocumentFormatting:       s.formatting,

@@ -82,19 +82,14 @@ func (s *server) didChange(r *rpc.Request) (any, error) {
 	return nil, nil
 }
 
-// didSave has nothing to do: the text is known already, and a client that
-// watches files tells of the disk.
-func (s *server) didSave(_ *glsp.Context, params *lsp.DidSaveTextDocumentParams) error {
-	s.workspace.FilesChanged(pathOf(params.TextDocument.URI))
-	return nil
-}
-
-// didClose lets a document go.
+// didClose lets a document go. What is on disk counts again, and may be other
+// than when it was last looked at.
 func (s *server) didClose(_ *glsp.Context, params *lsp.DidCloseTextDocumentParams) error {
 	path := pathOf(params.TextDocument.URI)
 	if !s.workspace.CloseDocument(path) {
 		s.log.Warn("a document was closed that is not open", "uri", params.TextDocument.URI)
 	}
+	s.workspace.FilesChanged(path)
 	s.published.closed(path)
 	return nil
 }
