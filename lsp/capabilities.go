@@ -16,6 +16,14 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 				OpenClose: &yes,
 				Change:    pointer(lsp.TextDocumentSyncKindIncremental),
 			},
+			ReferencesProvider:              true,
+			DocumentHighlightProvider:       true,
+			CodeLensProvider:                &lsp.CodeLensOptions{},
+			DocumentLinkProvider:            &lsp.DocumentLinkOptions{},
+			FoldingRangeProvider:            true,
+			SelectionRangeProvider:          true,
+			RenameProvider:                  s.renameOptions(),
+			SemanticTokensProvider:          tokenOptions(),
 			DocumentFormattingProvider:      true,
 			DocumentRangeFormattingProvider: protocol.DocumentRangeFormattingOptions{RangesSupport: s.client.RangesFormatting},
 			DocumentOnTypeFormattingProvider: &lsp.DocumentOnTypeFormattingOptions{
@@ -33,6 +41,15 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 		c.DiagnosticProvider = &protocol.DiagnosticOptions{Identifier: section, InterFileDependencies: true}
 	}
 	return c
+}
+
+// renameOptions is the offer of rename; only a client that knows how may ask
+// beforehand what would be renamed.
+func (s *server) renameOptions() any {
+	if !s.client.PrepareRename {
+		return true
+	}
+	return lsp.RenameOptions{PrepareProvider: pointer(true)}
 }
 
 func pointer[T any](value T) *T { return &value }

@@ -14,6 +14,7 @@ func (s *server) methods() map[string]rpc.Method {
 		string(lsp.MethodTextDocumentDidChange):     s.didChange,
 		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
 		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
+		string(lsp.MethodTextDocumentRename):        rpc.Typed(s.rename),
 	}
 }
 
@@ -29,6 +30,18 @@ func (s *server) handler() *lsp.Handler {
 
 		TextDocumentDidOpen:  s.didOpen,
 		TextDocumentDidClose: s.didClose,
+
+		TextDocumentReferences:        s.references,
+		TextDocumentDocumentHighlight: s.highlight,
+		TextDocumentCodeLens:          s.lenses,
+		TextDocumentDocumentLink:      s.links,
+		TextDocumentFoldingRange:      s.folding,
+		TextDocumentSelectionRange:    s.selections,
+		TextDocumentPrepareRename:     s.prepareRename,
+
+		TextDocumentSemanticTokensFull:      s.tokensFull,
+		TextDocumentSemanticTokensFullDelta: s.tokensDelta,
+		TextDocumentSemanticTokensRange:     s.tokensRange,
 
 		TextDocumentFormatting:       s.formatting,
 		TextDocumentRangeFormatting:  s.rangeFormatting,

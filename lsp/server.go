@@ -34,6 +34,7 @@ type server struct {
 	buffers       buffers
 	published     published
 	refreshes     refreshes
+	tokens        tokenCache
 }
 
 // Options say how to serve.

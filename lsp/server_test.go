@@ -6,12 +6,10 @@ import (
 	"log/slog"
 	"os"
 	"path/filepath"
-	"strings"
 	"testing"
 	"time"
 
 	"github.com/stretchr/testify/require"
-	lsp "github.com/tliron/glsp/protocol_3_16"
 
 	"spanwright/lsp/lsptest"
 	"spanwright/lsp/protocol"
@@ -70,7 +68,3 @@ func codes(list []protocol.Diagnostic) []string {
 	return all
 }
 
-// everything is the range of a whole document.
-func everything(text string) lsp.Range {
-	return lsp.Range{End: lsp.Position{Line: uint32(strings.Count(text, "\n") + 1)}}
-}

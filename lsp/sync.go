@@ -91,5 +91,6 @@ func (s *server) didClose(_ *glsp.Context, params *lsp.DidCloseTextDocumentParam
 	}
 	s.workspace.FilesChanged(path)
 	s.published.closed(path)
+	s.tokens.drop(path)
 	return nil
 }

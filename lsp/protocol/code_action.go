@@ -46,17 +46,14 @@ type CodeActionDisabled struct {
 // WorkspaceEdit is a change over several documents. A client that announced
 // documentChanges gets DocumentChanges, any other one Changes.
 type WorkspaceEdit struct {
-	Changes map[glsp.DocumentUri][]glsp.TextEdit `json:"changes,omitempty"`
-	// DocumentChanges holds TextDocumentEdit and, where the client announced
-	// them, glsp's CreateFile, RenameFile and DeleteFile.
-	DocumentChanges   []any                       `json:"documentChanges,omitempty"`
-	ChangeAnnotations map[string]ChangeAnnotation `json:"changeAnnotations,omitempty"`
+	Changes         map[glsp.DocumentUri][]glsp.TextEdit `json:"changes,omitempty"`
+	DocumentChanges []TextDocumentEdit                   `json:"documentChanges,omitempty"`
 }
 
 // TextDocumentEdit is the change of one document at one version.
 type TextDocumentEdit struct {
 	TextDocument OptionalVersionedTextDocumentIdentifier `json:"textDocument"`
-	Edits        List[AnnotatedTextEdit]                 `json:"edits"`
+	Edits        List[glsp.TextEdit]                     `json:"edits"`
 }
 
 // OptionalVersionedTextDocumentIdentifier names a document; a nil version
@@ -64,20 +61,6 @@ type TextDocumentEdit struct {
 type OptionalVersionedTextDocumentIdentifier struct {
 	URI     glsp.DocumentUri `json:"uri"`
 	Version *int32           `json:"version"`
-}
-
-// AnnotatedTextEdit replaces a range; its annotation may be left out.
-type AnnotatedTextEdit struct {
-	Range        glsp.Range `json:"range"`
-	NewText      string     `json:"newText"`
-	AnnotationID string     `json:"annotationId,omitempty"`
-}
-
-// ChangeAnnotation describes a group of edits to the user.
-type ChangeAnnotation struct {
-	Label             string `json:"label"`
-	NeedsConfirmation bool   `json:"needsConfirmation,omitempty"`
-	Description       string `json:"description,omitempty"`
 }
 
 // ApplyWorkspaceEditParams asks the client to make a change.

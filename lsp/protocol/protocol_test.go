@@ -97,10 +97,10 @@ func TestClientCapabilities(t *testing.T) {
 	}
 }
 
-func TestEditsNameTheirAnnotationOnlyIfTheyHaveOne(t *testing.T) {
-	edit := WorkspaceEdit{DocumentChanges: []any{TextDocumentEdit{
+func TestAVersionThatIsNotKnownIsNull(t *testing.T) {
+	edit := WorkspaceEdit{DocumentChanges: []TextDocumentEdit{{
 		TextDocument: OptionalVersionedTextDocumentIdentifier{URI: "a"},
-		Edits:        List[AnnotatedTextEdit]{{Range: glsp.Range{}, NewText: "x"}},
+		Edits:        List[glsp.TextEdit]{{Range: glsp.Range{}, NewText: "x"}},
 	}}}
 	assert.JSONEq(t, `{"documentChanges":[{"textDocument":{"uri":"a","version":null},
 		"edits":[{"range":{"start":{"line":0,"character":0},"end":{"line":0,"character":0}},"newText":"x"}]}]}`, encode(t, edit))
