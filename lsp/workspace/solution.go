@@ -135,7 +135,8 @@ func solve(ctx context.Context, resolved *resolve.Result, previous *Solution) (*
 		previous.stiffness.Lock()
 		defer previous.stiffness.Unlock()
 		if previous.Numbers() != nil {
-			s.Before = &previous.Effect
+			effect := previous.Effect // a copy: a pointer into it would keep all solutions ever made
+			s.Before = &effect
 		} else {
 			s.Before = previous.Before
 		}
