@@ -32,6 +32,11 @@ func (c *Client) Received(method string) []Message {
 	return c.receivedLocked(method)
 }
 
+// Forget drops what was received so far, which a long session would pile up.
+func (c *Client) Forget() {
+	c.update(func() { c.received = nil })
+}
+
 func (c *Client) receivedLocked(method string) []Message {
 	var all []Message
 	for _, m := range c.received {

@@ -45,52 +45,13 @@ type FullDocumentDiagnosticReport struct {
 	Kind     string           `json:"kind"`
 	ResultID string           `json:"resultId,omitempty"`
 	Items    List[Diagnostic] `json:"items"`
-	// RelatedDocuments holds full or unchanged reports of documents whose
-	// diagnostics follow from this one, by URI.
-	RelatedDocuments map[glsp.DocumentUri]any `json:"relatedDocuments,omitempty"`
 }
 
 // UnchangedDocumentDiagnosticReport says that the last report still holds.
 type UnchangedDocumentDiagnosticReport struct {
 	// Kind is DiagnosticReportUnchanged.
-	Kind             string                   `json:"kind"`
-	ResultID         string                   `json:"resultId"`
-	RelatedDocuments map[glsp.DocumentUri]any `json:"relatedDocuments,omitempty"`
-}
-
-// PreviousResultID names the last report that the client holds of a document.
-type PreviousResultID struct {
-	URI   glsp.DocumentUri `json:"uri"`
-	Value string           `json:"value"`
-}
-
-// WorkspaceDiagnosticParams asks for the diagnostics of all documents.
-type WorkspaceDiagnosticParams struct {
-	Identifier        string             `json:"identifier,omitempty"`
-	PreviousResultIDs []PreviousResultID `json:"previousResultIds"`
-}
-
-// WorkspaceDiagnosticReport answers workspace/diagnostic. Its items are
-// WorkspaceFullDocumentDiagnosticReport or
-// WorkspaceUnchangedDocumentDiagnosticReport.
-type WorkspaceDiagnosticReport struct {
-	Items List[any] `json:"items"`
-}
-
-// WorkspaceFullDocumentDiagnosticReport is the full set of one document.
-// Version is null for a document that is not open.
-type WorkspaceFullDocumentDiagnosticReport struct {
-	FullDocumentDiagnosticReport
-	URI     glsp.DocumentUri `json:"uri"`
-	Version *int32           `json:"version"`
-}
-
-// WorkspaceUnchangedDocumentDiagnosticReport says that a document's last
-// report still holds.
-type WorkspaceUnchangedDocumentDiagnosticReport struct {
-	UnchangedDocumentDiagnosticReport
-	URI     glsp.DocumentUri `json:"uri"`
-	Version *int32           `json:"version"`
+	Kind     string `json:"kind"`
+	ResultID string `json:"resultId"`
 }
 
 // DiagnosticOptions is the server's offer of pull diagnostics.
@@ -99,10 +60,4 @@ type DiagnosticOptions struct {
 	// InterFileDependencies: an edit in one file may change another's set.
 	InterFileDependencies bool `json:"interFileDependencies"`
 	WorkspaceDiagnostics  bool `json:"workspaceDiagnostics"`
-}
-
-// DiagnosticServerCancellationData goes with an error of code −32802: whether
-// the client should ask again.
-type DiagnosticServerCancellationData struct {
-	RetriggerRequest bool `json:"retriggerRequest"`
 }
