@@ -61,10 +61,18 @@ func (r *Result) index() *nameIndex {
 }
 
 func (r *Result) makeIndex() {
+	declared := r.indexDefinitions()
+	r.indexReferences(declared)
+}
+
+// indexDefinitions finds the definitions. It returns them by the entry that is
+// the first to declare them.
+func (r *Result) indexDefinitions() (declared []*Definition) {
 	n := &r.names
-	n.bySymbol = map[*symbol]*Definition{}
-	n.byFile = make([][]Reference, len(r.Trees))
-	sites := map[site]*Definition{}
+	n.bySymbol = make(map[*symbol]*Definition, len(r.entries))
+	declared = make([]*Definition, len(r.entries))
+	all := make([]Definition, 0, len(r.entries)) // in one piece: there are many, and they live and die together
+	sites := map[site]*Definition{}              // of what may be declared more than once: a line of a part
 	for i := range r.entries {
 		e := &r.entries[i]
 		f := e.fragment
@@ -72,31 +80,62 @@ func (r *Result) makeIndex() {
 			continue
 		}
 		file, unit, span := r.declares(e)
+		tree := r.Trees[file]
+		block := tree.Units[unit].Block
+		inPart := f.parameter >= 0 || block == syntax.InPart || block == syntax.InCaseOfPart
 		at := site{file, span.Start}
-		d := sites[at]
+		var d *Definition
+		if inPart {
+			d = sites[at]
+		}
 		if d == nil {
-			tree := r.Trees[file]
-			d = &Definition{Name: f.name.name, Kind: f.kind, File: tree.File.Path, Span: span, Statement: tree.Units[unit].Span(), Description: tree.Description(int(unit))}
-			if tree.Units[unit].Block == syntax.InPart || tree.Units[unit].Block == syntax.InCaseOfPart {
-				if o := tree.Opening(int(unit)); o >= 0 {
-					if name := tree.Units[o].Statement.Declares(); name != nil {
-						d.Part = name.Text
-					}
-				}
+			all = append(all, Definition{Name: f.name.name, Kind: f.kind, File: tree.File.Path, Span: span,
+				Statement: tree.Units[unit].Span(), Description: tree.Description(int(unit))})
+			d = &all[len(all)-1]
+			if inPart {
+				d.Part = partOf(tree, int(unit))
+				sites[at] = d
 			}
-			sites[at] = d
 			n.definitions = append(n.definitions, d)
-			n.byFile[file] = append(n.byFile[file], Reference{d.File, span, d, true})
+			declared[i] = d
 		}
 		if f.name.scope.holder == nil {
 			d.Full = append(d.Full, f.name.full())
 		}
 		n.bySymbol[f.name] = d
 	}
+	return declared
+}
+
+// partOf returns the name of the part in whose block a unit stands, or "".
+func partOf(tree *syntax.Tree, unit int) string {
+	if block := tree.Units[unit].Block; block != syntax.InPart && block != syntax.InCaseOfPart {
+		return "" // a parameter, in the opening line
+	}
+	if o := tree.Opening(unit); o >= 0 {
+		if name := tree.Units[o].Statement.Declares(); name != nil {
+			return name.Text
+		}
+	}
+	return ""
+}
+
+// indexReferences gathers all names of all files, in the order of the text.
+func (r *Result) indexReferences(declared []*Definition) {
+	n := &r.names
+	n.byFile = make([][]Reference, len(r.Trees))
+	order := func(a, b Reference) int {
+		return cmp.Or(cmp.Compare(a.Span.Start, b.Span.Start), cmp.Compare(a.Span.End, b.Span.End))
+	}
 	seen := map[source.Span]bool{}
 	var previous *syntax.Statement
 	for i := range r.entries {
 		e := &r.entries[i]
+		before := len(n.byFile[e.file])
+		if d := declared[i]; d != nil {
+			file := r.FileIndex(d.File)
+			n.byFile[file] = append(n.byFile[file], Reference{d.File, d.Span, d, true})
+		}
 		if e.fragment.statement != previous {
 			clear(seen)
 			previous = e.fragment.statement
@@ -111,11 +150,12 @@ func (r *Result) makeIndex() {
 			seen[span] = true
 			n.byFile[e.file] = append(n.byFile[e.file], Reference{r.Trees[e.file].File.Path, span, d, false})
 		}
+		slices.SortStableFunc(n.byFile[e.file][before:], order)
 	}
 	for i, list := range n.byFile {
-		slices.SortStableFunc(list, func(a, b Reference) int {
-			return cmp.Or(cmp.Compare(a.Span.Start, b.Span.Start), cmp.Compare(a.Span.End, b.Span.End))
-		})
+		if !slices.IsSortedFunc(list, order) { // lines of a part come once for each place
+			slices.SortStableFunc(list, order)
+		}
 		// A line of a part gives its references once for each place.
 		n.byFile[i] = slices.CompactFunc(list, func(a, b Reference) bool { return a.Span == b.Span && a.Definition == b.Definition })
 		for _, ref := range n.byFile[i] {
