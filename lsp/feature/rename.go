@@ -1,7 +1,6 @@
 package feature
 
 import (
-	"errors"
 	"fmt"
 	"maps"
 	"slices"
@@ -19,7 +18,7 @@ import (
 func PrepareRename(s *workspace.Snapshot, path string, offset int) (span source.Span, name string, err error) {
 	m, ok := meaningAt(s, path, offset)
 	if !ok {
-		return span, "", errors.New("Put the cursor on a name to rename it.")
+		return span, "", refuse("Put the cursor on a name to rename it.")
 	}
 	tree, err := s.Tree(path)
 	if err != nil {
@@ -49,7 +48,7 @@ func lastPart(name string) string { return name[strings.LastIndexByte(name, '.')
 func Rename(s *workspace.Snapshot, path string, offset int, name string) (map[string][]source.Edit, error) {
 	m, ok := meaningAt(s, path, offset)
 	if !ok {
-		return nil, errors.New("Put the cursor on a name to rename it.")
+		return nil, refuse("Put the cursor on a name to rename it.")
 	}
 	if err := nameable(name); err != nil {
 		return nil, err
@@ -64,7 +63,7 @@ func Rename(s *workspace.Snapshot, path string, offset int, name string) (map[st
 		}
 		tree, err := s.Tree(r.File)
 		if err != nil {
-			return nil, fmt.Errorf("%s uses the name and cannot be read: %w", r.File, err)
+			return nil, refuse("%s uses the name and cannot be read: %v.", r.File, err)
 		}
 		edits[r.File] = append(edits[r.File], source.Edit{Span: tailSpan(tree.File, r), New: name})
 	}
@@ -81,11 +80,11 @@ func nameable(name string) error {
 	tokens := syntax.Tokens(name)
 	switch {
 	case len(tokens) != 1 || tokens[0].Kind != syntax.Word || strings.ContainsAny(name, ".-²³⁴⁵⁶"):
-		return fmt.Errorf("%q is no name: a name is a letter or _, then letters, digits and _.", name)
+		return refuse("%q is no name: a name is a letter or _, then letters, digits and _.", name)
 	case syntax.Reserved(name):
-		return fmt.Errorf("%s is a word of the language. Choose another name.", name)
+		return refuse("%s is a word of the language. Choose another name.", name)
 	case syntax.UnitSymbol(name):
-		return fmt.Errorf("%s is a unit. Choose another name.", name)
+		return refuse("%s is a unit. Choose another name.", name)
 	}
 	return nil
 }
@@ -99,7 +98,7 @@ func collision(s *workspace.Snapshot, result *resolve.Result, r resolve.Referenc
 	}
 	for _, other := range result.Visible(r.File, r.Span.Start)[written] {
 		if other.Kind.Space() == r.Definition.Kind.Space() {
-			return fmt.Errorf("%s is already the name of a %s. Choose another name.", written, other.Kind)
+			return refuse("%s is already the name of a %s. Choose another name.", written, other.Kind)
 		}
 	}
 	return nil
@@ -119,16 +118,16 @@ func sameAfter(s *workspace.Snapshot, before *resolve.Result, edits map[string][
 	}
 	after := resolve.Model(tree, changed)
 	if same, what := sameStructure(before.Model, after.Model); !same {
-		return fmt.Errorf("With this name the model would change: %s would not be the same.", what)
+		return refuse("With this name the model would change: %s would not be the same.", what)
 	}
 	old := names(before.Diagnostics)
 	if now := names(after.Diagnostics); !slices.Equal(old, now) {
 		for _, d := range after.Diagnostics {
 			if !slices.Contains(old, d.Name) {
-				return fmt.Errorf("With this name the model would have a new mistake: %s", d.Summary)
+				return refuse("With this name the model would have a new mistake: %s", d.Summary)
 			}
 		}
-		return errors.New("With this name the model would have other mistakes than now.")
+		return refuse("With this name the model would have other mistakes than now.")
 	}
 	return nil
 }
