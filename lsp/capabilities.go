@@ -10,12 +10,16 @@ import (
 func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 	yes := true
 	c := protocol.ServerCapabilities{
-		PositionEncoding: encoding,
+		PositionEncoding:  encoding,
+		InlayHintProvider: &protocol.InlayHintOptions{},
 		ServerCapabilities: lsp.ServerCapabilities{
 			TextDocumentSync: lsp.TextDocumentSyncOptions{
 				OpenClose: &yes,
 				Change:    pointer(lsp.TextDocumentSyncKindIncremental),
 			},
+			DefinitionProvider:              true,
+			DocumentSymbolProvider:          true,
+			WorkspaceSymbolProvider:         true,
 			ReferencesProvider:              true,
 			DocumentHighlightProvider:       true,
 			CodeLensProvider:                &lsp.CodeLensOptions{},

@@ -14,6 +14,7 @@ func (s *server) methods() map[string]rpc.Method {
 		string(lsp.MethodTextDocumentDidChange):     s.didChange,
 		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
 		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
+		protocol.MethodTextDocumentInlayHint:        rpc.Typed(s.inlayHints),
 		string(lsp.MethodTextDocumentRename):        rpc.Typed(s.rename),
 	}
 }
@@ -31,6 +32,9 @@ func (s *server) handler() *lsp.Handler {
 		TextDocumentDidOpen:  s.didOpen,
 		TextDocumentDidClose: s.didClose,
 
+		TextDocumentDefinition:        s.definition,
+		TextDocumentDocumentSymbol:    s.symbols,
+		WorkspaceSymbol:               s.workspaceSymbols,
 		TextDocumentReferences:        s.references,
 		TextDocumentDocumentHighlight: s.highlight,
 		TextDocumentCodeLens:          s.lenses,

@@ -32,6 +32,9 @@ func TestReferencesAndHighlights(t *testing.T) {
 	assert.Equal(t, lsp.DocumentHighlightKindRead, *marks[1].Kind)
 	assert.Empty(t, c.References(main, lsp.Position{Line: 1000}))
 
+	assert.Equal(t, []lsp.Location{found[0]}, c.Definition(main, at))
+	assert.Empty(t, c.Definition(main, lsp.Position{}))
+
 	links := c.Links(main)
 	require.Len(t, links, 1)
 	assert.Equal(t, common, *links[0].Target)
@@ -163,4 +166,32 @@ func TestTokens(t *testing.T) {
 	var other map[string]json.RawMessage
 	require.NoError(t, c.Call("textDocument/semanticTokens/full/delta", map[string]any{"textDocument": document, "previousResultId": "old"}, &other))
 	assert.Contains(t, other, "data", "a client with something else gets all")
+}
+
+func TestSymbols(t *testing.T) {
+	c := start(t, lsptest.Options{})
+	c.Open(uri, frame)
+	outline := c.Symbols(uri)
+	index := slices.IndexFunc(outline, func(s lsp.DocumentSymbol) bool { return s.Name == "Nodes" })
+	require.GreaterOrEqual(t, index, 0)
+	nodes := outline[index].Children
+	require.Len(t, nodes, 2)
+	assert.Equal(t, "A", nodes[0].Name)
+	assert.Equal(t, "node A = (0, 0) m", c.Under(uri, nodes[0].Range))
+	assert.Equal(t, "A", c.Under(uri, nodes[0].SelectionRange))
+
+	found := c.WorkspaceSymbols("post")
+	require.Len(t, found, 1)
+	assert.Equal(t, uri, found[0].Location.URI)
+	assert.Equal(t, "Shed", *found[0].ContainerName)
+	assert.Empty(t, c.WorkspaceSymbols("nobody"))
+
+	flat := start(t, lsptest.Options{Capabilities: map[string]any{}})
+	flat.Open(uri, frame)
+	list := lsptest.Ask[[]lsp.SymbolInformation](flat, "textDocument/documentSymbol", map[string]any{"textDocument": map[string]any{"uri": uri}})
+	var names []string
+	for _, s := range list {
+		names = append(names, s.Name)
+	}
+	assert.ElementsMatch(t, []string{"steel", "post", "A", "B", "c", "W"}, names)
 }

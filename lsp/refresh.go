@@ -2,8 +2,11 @@ package lsp
 
 import (
 	"context"
+	"errors"
 	"sync"
 	"time"
+
+	"github.com/sourcegraph/jsonrpc2"
 
 	"spanwright/lsp/protocol"
 )
@@ -65,7 +68,8 @@ func (s *server) sendRefreshes(ctx context.Context) {
 			all.Go(func() {
 				ctx, cancel := context.WithTimeout(ctx, refreshPatience)
 				defer cancel()
-				if err := s.connection.Call(ctx, method, nil, nil); err != nil && ctx.Err() == nil {
+				err := s.connection.Call(ctx, method, nil, nil)
+				if err != nil && ctx.Err() == nil && !errors.Is(err, jsonrpc2.ErrClosed) {
 					s.log.Info("a refresh failed", "method", method, "error", err)
 				}
 			})

@@ -67,4 +67,3 @@ func codes(list []protocol.Diagnostic) []string {
 	}
 	return all
 }
-
