@@ -28,6 +28,7 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 			SelectionRangeProvider:          true,
 			RenameProvider:                  s.renameOptions(),
 			SemanticTokensProvider:          tokenOptions(),
+			ExecuteCommandProvider:          &lsp.ExecuteCommandOptions{Commands: s.commandNames()},
 			DocumentFormattingProvider:      true,
 			DocumentRangeFormattingProvider: protocol.DocumentRangeFormattingOptions{RangesSupport: s.client.RangesFormatting},
 			DocumentOnTypeFormattingProvider: &lsp.DocumentOnTypeFormattingOptions{

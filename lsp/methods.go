@@ -15,6 +15,7 @@ func (s *server) methods() map[string]rpc.Method {
 		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
 		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
 		protocol.MethodTextDocumentInlayHint:        rpc.Typed(s.inlayHints),
+		string(lsp.MethodWorkspaceExecuteCommand):   rpc.Typed(s.executeCommand),
 		string(lsp.MethodTextDocumentRename):        rpc.Typed(s.rename),
 	}
 }

@@ -1,0 +1,74 @@
+package lsp
+
+import (
+	"context"
+	"encoding/json"
+	"io"
+	"log/slog"
+	"strings"
+	"testing"
+	"time"
+
+	"github.com/stretchr/testify/assert"
+	"github.com/stretchr/testify/require"
+
+	"spanwright/lang/generate"
+	"spanwright/lsp/lsptest"
+)
+
+// serveAnnounced tells of every solve at once.
+func serveAnnounced(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logger) int {
+	pace := quick()
+	pace.Slow = time.Nanosecond
+	return Serve(ctx, conn, Options{Log: log, Version: "test", Pace: pace})
+}
+
+// A long solve is shown, can be cancelled by the user, and runs again on
+// command.
+func TestLongSolves(t *testing.T) {
+	c := lsptest.Start(t, serveAnnounced, lsptest.Options{})
+	text := generate.TenThousand.Text()
+	c.Open(uri, text)
+	create := c.WaitReceived("window/workDoneProgress/create", 1)
+	var asked struct{ Token string }
+	require.NoError(t, json.Unmarshal(create[0].Params, &asked))
+	progress := c.WaitReceived("$/progress", 1)
+	assert.Contains(t, string(progress[0].Params), `"kind":"begin"`)
+	assert.Contains(t, string(progress[0].Params), "Solving shed")
+	c.Notify("window/workDoneProgress/cancel", map[string]any{"token": asked.Token})
+	progress = c.WaitReceived("$/progress", 2)
+	assert.Contains(t, string(progress[1].Params), `"kind":"end"`)
+
+	c.WaitReceived("workspace/codeLens/refresh", 1)
+	lenses := c.Lenses(uri)
+	require.NotEmpty(t, lenses)
+	require.Contains(t, lenses[0].Command.Title, "cancelled")
+
+	c.Execute("spanwright.solveNow", map[string]any{"uri": uri, "position": map[string]any{"line": 0, "character": 0}})
+	c.WaitReceived("workspace/codeLens/refresh", 2)
+	assert.Contains(t, c.Lenses(uri)[0].Command.Title, "this version")
+
+	// A client that shows no progress is not bothered.
+	plain := lsptest.Start(t, serveAnnounced, lsptest.Options{Capabilities: map[string]any{}})
+	plain.Open(uri, generate.Thousand.Text())
+	for deadline := time.Now().Add(lsptest.Patience); !strings.Contains(plain.Lenses(uri)[0].Command.Title, "this version"); {
+		require.True(t, time.Now().Before(deadline), "the solve never ends")
+		time.Sleep(10 * time.Millisecond)
+	}
+	assert.Empty(t, plain.Received("window/workDoneProgress/create"))
+}
+
+func TestCommandsThatMakeNoSense(t *testing.T) {
+	c := start(t, lsptest.Options{})
+	for _, params := range []map[string]any{
+		{"command": "spanwright.nothing", "arguments": []any{map[string]any{"uri": uri}}},
+		{"command": "spanwright.solveNow"},
+		{"command": "spanwright.solveNow", "arguments": []any{5}},
+		{"command": "spanwright.solveNow", "arguments": []any{map[string]any{"uri": "file:///no/such.span"}}},
+		{},
+	} {
+		assert.EqualValues(t, -32602, c.Refused("workspace/executeCommand", params).Code, params)
+	}
+	offered := c.ServerCapabilities["executeCommandProvider"].(map[string]any)["commands"]
+	assert.Contains(t, offered, "spanwright.solveNow")
+}
