@@ -1,0 +1,291 @@
+package feature
+
+import (
+	"encoding/base64"
+	"fmt"
+	"strings"
+
+	"spanwright/analysis"
+	"spanwright/analysis/diagram"
+	"spanwright/lang/model"
+	"spanwright/lang/quantity"
+	"spanwright/lang/resolve"
+)
+
+const (
+	// diagramWidth is that of text diagrams, in characters.
+	diagramWidth = 32
+	// mostPicture bounds a picture: clients drop it where a hover gets too long.
+	mostPicture = 60_000
+)
+
+func (h *hover) member(d *resolve.Definition) {
+	m := h.model
+	i := indexOf(m.Members, fullName(d), func(b *model.Member) string { return b.Name })
+	if i < 0 {
+		h.page.add(fmt.Sprintf("**%s** · %s", d.Name, d.Kind))
+		return
+	}
+	h.page.add(h.memberLine(&m.Members[i]))
+	if !h.solved {
+		return
+	}
+	n := h.numbers
+	member := n.solution.Member(m.Members[i].Name)
+	if member < 0 {
+		return
+	}
+	envelopes := n.envelopes()
+	if len(envelopes) == 0 {
+		return
+	}
+	rows, governs := h.governing(envelopes, member)
+	h.page.add(table([]string{envelopes[0].Name() + " governs", "value>", "where", "in", ""}, rows))
+	if len(rows) == 0 {
+		h.page.add("No force in " + envelopes[0].Name() + ".")
+	}
+	if governs >= 0 {
+		h.diagrams(member, governs)
+	}
+	h.ownStiffness(member)
+	if len(rows) > 0 {
+		h.page.add(signs(h.model.Plane))
+	}
+}
+
+// signs reminds of the sign convention.
+func signs(plane bool) string {
+	if plane {
+		return "N > 0 is tension; My > 0 puts tension on the −z side (a floor beam sags)."
+	}
+	return "N > 0 is tension; My > 0 puts tension on the −z side (a floor beam sags), Mz > 0 on the −y side; member axes."
+}
+
+// memberLine says what a member is: "**r1** · beam B → C, 6.18 m, rafter IPE 300, S275".
+func (h *hover) memberLine(b *model.Member) string {
+	m := h.model
+	var nodes []string
+	for _, n := range b.Nodes {
+		nodes = append(nodes, m.Nodes[n].Name)
+	}
+	parts := []string{fmt.Sprintf("%s %s, %s", b.Kind, strings.Join(nodes, " → "), quantity.Write(b.Length, m.Display.Length, 3))}
+	if b.Section >= 0 {
+		s := &m.Sections[b.Section]
+		parts = append(parts, strings.TrimSpace(code(s.Name)+" "+s.Title))
+		if material := &m.Materials[s.Material]; material.Grade != "" {
+			parts = append(parts, material.Grade)
+		} else {
+			parts = append(parts, material.Name)
+		}
+	}
+	switch b.Sense {
+	case model.TensionOnly:
+		parts = append(parts, "tension only")
+	case model.CompressionOnly:
+		parts = append(parts, "compression only")
+	}
+	return "**" + b.Name + "** · " + strings.Join(parts, ", ")
+}
+
+// governing returns the rows of what governs a member, and the result that the
+// diagrams are drawn of: that of the largest moment, else of the first row.
+// Deflections are those of the first family for service, where there is one.
+func (h *hover) governing(envelopes []*analysis.Envelope, member int) (rows [][]string, governs int) {
+	n := h.numbers
+	governs = -1
+	length := n.model.Members[member].Length
+	service := envelopes[0]
+	for i := range n.model.Families {
+		e := n.results.Envelope(i)
+		if f := &n.model.Families[i]; f.Code != model.Written && f.Situation != model.Strength && !e.Empty() {
+			service = e
+			break
+		}
+	}
+	add := func(g *analysis.Governing) {
+		note := ""
+		switch {
+		case g.Quantity == analysis.Deflection:
+			note = spanRatio(length, g.Value)
+		case g.Share > 0:
+			note = percent(g.Share) + " of yield"
+		}
+		rows = append(rows, []string{g.Quantity.String(), quantity.Write(g.Value, n.unitOf(g.Quantity), 3),
+			placeWords(n.model, member, g.At), code(n.name(g.Governed)), note})
+	}
+	list := envelopes[0].Governing(member)
+	for i := range list {
+		g := &list[i]
+		if g.Quantity == analysis.Deflection && service != envelopes[0] {
+			continue
+		}
+		if governs < 0 {
+			governs = g.Result
+		}
+		add(g)
+	}
+	if service != envelopes[0] {
+		for _, g := range service.Governing(member) {
+			if g.Quantity == analysis.Deflection {
+				add(&g)
+			}
+		}
+	}
+	return rows, governs
+}
+
+// placeWords writes a place along a member: "at B", "3.72 m".
+func placeWords(m *model.Model, member int, at float64) string {
+	words := analysis.PlaceWords(m, member, at)
+	if strings.HasSuffix(words, " "+m.Display.Length.Symbol) {
+		return words
+	}
+	return "at " + words
+}
+
+// diagrams draws the moment and the deflected shape of a member in one result.
+func (h *hover) diagrams(member, result int) {
+	n := h.numbers
+	r := n.results.At(result)
+	courses := diagram.Bending(r.Member(member))
+	if len(courses) == 0 {
+		return
+	}
+	if h.options.Pictures {
+		if svg, err := diagram.Picture(courses...); err == nil && len(svg) <= mostPicture {
+			h.page.add(fmt.Sprintf("![%s along %s in %s](data:image/svg+xml;base64,%s)", courses[0].Label, n.model.Members[member].Name, r.Name(), base64.StdEncoding.EncodeToString(svg)))
+			return
+		}
+	}
+	var lines []string
+	for _, c := range courses {
+		lines = append(lines, diagram.Text(c, diagramWidth))
+	}
+	h.page.add("In "+code(r.Name())+":", block(strings.Join(lines, "\n")))
+}
+
+// ownStiffness writes the member's own terms with their closed forms.
+func (h *hover) ownStiffness(member int) {
+	n := h.numbers
+	s, ok := n.results.Solver().Structure().StiffnessOf(member)
+	if !ok {
+		return
+	}
+	var parts []string
+	for _, t := range s.Terms {
+		freedom := 0
+		if t.Row%6 > 2 && t.Column%6 > 2 {
+			freedom = 3
+		} else if t.Row%6 > 2 || t.Column%6 > 2 {
+			continue // a force for a turn: it follows from the others
+		}
+		parts = append(parts, t.Name+" "+stiffnessWords(t.Value, freedom))
+	}
+	if len(parts) > 0 {
+		h.page.add("Own stiffness " + strings.Join(parts, " · "))
+	}
+}
+
+func (h *hover) group(d *resolve.Definition) {
+	i := indexOf(h.model.Groups, fullName(d), func(g *model.Group) string { return g.Name })
+	if i < 0 {
+		h.page.add("**" + d.Name + "** · group")
+		return
+	}
+	g := &h.model.Groups[i]
+	length := 0.0
+	var list []string
+	for _, m := range g.Members {
+		length += h.model.Members[m].Length
+		if len(list) < 20 {
+			list = append(list, h.model.Members[m].Name)
+		}
+	}
+	text := strings.Join(list, ", ")
+	if len(g.Members) > len(list) {
+		text += fmt.Sprintf(" and %d more", len(g.Members)-len(list))
+	}
+	h.page.add(fmt.Sprintf("**%s** · group of %s, %s in all: %s", g.Name, counted(len(g.Members), "member"), quantity.Write(length, h.model.Display.Length, 3), text))
+	if h.solved {
+		if e, ok := h.numbers.first(); ok {
+			h.worst(e, g.Members)
+		}
+	}
+}
+
+// worst says which members of some have the largest forces, stress and
+// deflection in an envelope.
+func (h *hover) worst(e *analysis.Envelope, members []int) {
+	n := h.numbers
+	if len(members) > mostAsked {
+		return
+	}
+	best := map[analysis.Quantity]struct {
+		analysis.Governing
+		member int
+	}{}
+	for _, m := range members {
+		member := n.solution.Member(h.model.Members[m].Name)
+		if member < 0 {
+			continue
+		}
+		for _, g := range e.Governing(member) {
+			if b, ok := best[g.Quantity]; !ok || abs(g.Value) > abs(b.Value) {
+				best[g.Quantity] = struct {
+					analysis.Governing
+					member int
+				}{g, member}
+			}
+		}
+	}
+	var rows [][]string
+	for _, q := range []analysis.Quantity{analysis.My, analysis.Mz, analysis.T, analysis.Vy, analysis.Vz, analysis.N, analysis.NormalStress, analysis.Deflection} {
+		b, ok := best[q]
+		if !ok {
+			continue
+		}
+		note := ""
+		if b.Share > 0 {
+			note = percent(b.Share) + " of yield"
+		}
+		rows = append(rows, []string{q.String(), quantity.Write(b.Value, n.unitOf(q), 3), n.model.Members[b.member].Name + " " + placeWords(n.model, b.member, b.At), code(n.name(b.Governed)), note})
+	}
+	h.page.add(table([]string{"Largest in " + e.Name(), "value>", "where", "in", ""}, rows))
+}
+
+// mostAsked bounds the members that a hover looks through.
+const mostAsked = 300
+
+func abs(x float64) float64 {
+	if x < 0 {
+		return -x
+	}
+	return x
+}
+
+func (h *hover) part(d *resolve.Definition) {
+	h.page.add(fmt.Sprintf("**%s** · %s", d.Name, d.Kind))
+	if d.Kind == resolve.PartName {
+		var places []string
+		for _, p := range h.model.Places {
+			places = append(places, p.Name)
+		}
+		if len(places) > 0 && len(places) <= 20 {
+			h.page.add("Placed parts of the model: " + strings.Join(places, ", "))
+		}
+		return
+	}
+	prefix := fullName(d) + "."
+	nodes, members := 0, 0
+	for i := range h.model.Nodes {
+		if strings.HasPrefix(h.model.Nodes[i].Name, prefix) {
+			nodes++
+		}
+	}
+	for i := range h.model.Members {
+		if strings.HasPrefix(h.model.Members[i].Name, prefix) {
+			members++
+		}
+	}
+	h.page.add(fmt.Sprintf("%s, %s; their names begin with %s", counted(nodes, "node"), counted(members, "member"), code(prefix)))
+}

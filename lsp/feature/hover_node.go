@@ -1,0 +1,217 @@
+package feature
+
+import (
+	"fmt"
+	"math"
+	"slices"
+	"strings"
+
+	"spanwright/analysis"
+	"spanwright/analysis/frame"
+	"spanwright/lang/model"
+	"spanwright/lang/quantity"
+	"spanwright/lang/resolve"
+)
+
+const (
+	// mostCases bounds the rows of single cases in a hover.
+	mostCases = 12
+	// mostFreedomsAsked bounds the models whose stiffness a hover works out: it
+	// must not take longer than a moment.
+	mostFreedomsAsked = 5000
+)
+
+func (h *hover) node(d *resolve.Definition) {
+	m := h.model
+	i := indexOf(m.Nodes, fullName(d), func(n *model.Node) string { return n.Name })
+	if i < 0 {
+		h.page.add("**" + d.Name + "** · node")
+		return
+	}
+	h.page.add("**" + m.Nodes[i].Name + "** · " + h.supportWords(i) + " at " + position(m, m.Nodes[i].Position))
+	if !h.solved {
+		return
+	}
+	n := h.solvedNode(m.Nodes[i].Name)
+	if n < 0 {
+		return
+	}
+	h.reactions(n)
+	h.movements(n)
+	h.stiffness(n)
+}
+
+// solvedNode is the node's index in the solved model, which may be older.
+func (h *hover) solvedNode(name string) int { return h.numbers.solution.Node(name) }
+
+// supportWords says how a node is held.
+func (h *hover) supportWords(node int) string {
+	var words []string
+	for i := range h.model.Supports {
+		if s := &h.model.Supports[i]; s.Node == node {
+			words = append(words, s.Words)
+		}
+	}
+	if len(words) == 0 {
+		return "node"
+	}
+	return "support " + strings.Join(words, ", ")
+}
+
+// position writes a place in the plane or in space.
+func position(m *model.Model, p [3]float64) string {
+	u := m.Display.Length
+	parts := []string{number(p[0], u), number(p[1], u), number(p[2], u)}
+	if m.Plane {
+		parts = []string{parts[0], parts[2]}
+	}
+	return "(" + strings.Join(parts, ", ") + ") " + u.Symbol
+}
+
+// support writes about the node of a support line.
+func (h *hover) support() {
+	for i := range h.model.Supports {
+		s := &h.model.Supports[i]
+		if s.Origin.File != h.file || s.Origin.Statement.Start != h.unit.Start {
+			continue
+		}
+		h.page.add("**" + h.model.Nodes[s.Node].Name + "** · " + h.supportWords(s.Node) + " at " + position(h.model, h.model.Nodes[s.Node].Position))
+		if h.solved {
+			if n := h.solvedNode(h.model.Nodes[s.Node].Name); n >= 0 {
+				h.reactions(n)
+			}
+		}
+		return
+	}
+}
+
+// reactions writes the reactions of a node, envelopes first.
+func (h *hover) reactions(node int) {
+	n := h.numbers
+	if !supported(n.model, node) {
+		return
+	}
+	rows := h.bands(func(e *analysis.Envelope) [6]analysis.Band { return e.Reaction(node) },
+		func(r analysis.Result) [6]float64 { return r.Reaction(node) }, n.forceUnit)
+	headings := []string{"Reaction"}
+	for _, f := range n.freedoms() {
+		headings = append(headings, analysis.ForceNames[f]+" "+n.forceUnit(f).Symbol+">")
+	}
+	h.page.add(table(headings, rows))
+	h.page.add("What the support does to the structure, along the global axes." + h.turnNote())
+}
+
+// turnNote explains the arrows of turns in a plane model.
+func (h *hover) turnNote() string {
+	if h.model.Plane {
+		return " ↻ is clockwise as drawn with x to the right and z up, positive about y."
+	}
+	return ""
+}
+
+func supported(m *model.Model, node int) bool {
+	return slices.ContainsFunc(m.Supports, func(s model.Support) bool { return s.Node == node })
+}
+
+// movements writes the movements of a node, envelopes first.
+func (h *hover) movements(node int) {
+	n := h.numbers
+	rows := h.bands(func(e *analysis.Envelope) [6]analysis.Band { return e.Movement(node) },
+		func(r analysis.Result) [6]float64 { return r.Movement(node) }, n.movementUnit)
+	headings := []string{"Movement"}
+	for _, f := range n.freedoms() {
+		headings = append(headings, analysis.MovementNames[f]+" "+n.movementUnit(f).Symbol+">")
+	}
+	h.page.add(table(headings, rows))
+}
+
+// bands writes the rows of six components: most and least of each envelope with
+// the result that gives them, then each case.
+func (h *hover) bands(of func(*analysis.Envelope) [6]analysis.Band, single func(analysis.Result) [6]float64, unit func(int) quantity.Unit) [][]string {
+	n := h.numbers
+	var rows [][]string
+	scale := 0.0
+	cell := func(g analysis.Governed, f int) string {
+		if math.Abs(g.Value) <= 1e-9*scale {
+			return "0"
+		}
+		return n.component(g.Value, f, unit(f), false) + " " + code(n.name(g))
+	}
+	for _, e := range n.envelopes() {
+		most, least := []string{"**" + e.Name() + "** most"}, []string{"**" + e.Name() + "** least"}
+		bands := of(e)
+		for _, f := range n.freedoms() {
+			scale = 0
+			for k := f / 3 * 3; k < f/3*3+3; k++ {
+				scale = math.Max(scale, math.Abs(bands[k].Largest().Value))
+			}
+			most = append(most, cell(bands[f].Most, f))
+			least = append(least, cell(bands[f].Least, f))
+		}
+		rows = append(rows, most)
+		if len(e.Results()) > 1 {
+			rows = append(rows, least)
+		}
+	}
+	for i := range n.model.Cases {
+		if i == mostCases {
+			rows = append(rows, []string{fmt.Sprintf("… %d more cases", len(n.model.Cases)-i)})
+			break
+		}
+		r := n.results.Case(i)
+		if r.Problem() != "" {
+			rows = append(rows, []string{r.Name(), "no numbers"})
+			continue
+		}
+		row := []string{r.Name()}
+		values := single(r)
+		for _, f := range n.freedoms() {
+			row = append(row, n.component(values[f], f, unit(f), false))
+		}
+		rows = append(rows, row)
+	}
+	return rows
+}
+
+// stiffness says how the structure resists movements of the node.
+func (h *hover) stiffness(node int) {
+	n := h.numbers
+	if n.results.Freedoms() > mostFreedomsAsked {
+		return
+	}
+	var s *frame.NodeStiffness
+	asked := n.solution.Stiffness(func() {
+		s, _ = n.results.Solver().Structure().StiffnessAt(h.ctx, node)
+	})
+	if !asked || s == nil {
+		return
+	}
+	var parts []string
+	for _, f := range n.freedoms() {
+		k := s.OthersFree[f]
+		if math.IsInf(k, 1) || k == 0 {
+			continue
+		}
+		parts = append(parts, analysis.MovementNames[f]+" "+stiffnessWords(k, f))
+	}
+	if len(parts) > 0 {
+		h.page.add("Stiffness here against " + strings.Join(parts, " · ") + " (force for one unit of movement, everything else free)")
+	}
+}
+
+// stiffnessWords writes a stiffness with a prefix that keeps it short.
+func stiffnessWords(k float64, freedom int) string {
+	per, base := "/m", "N"
+	if freedom > 2 {
+		per, base = "/rad", "Nm"
+	}
+	for _, p := range []struct {
+		factor float64
+		prefix string
+	}{{1e9, "G"}, {1e6, "M"}, {1e3, "k"}} {
+		if math.Abs(k) >= p.factor {
+			return quantity.Number(k/p.factor, 3) + " " + p.prefix + base + per
+		}
+	}
+	return quantity.Number(k, 3) + " " + base + per
+}
