@@ -8,7 +8,6 @@ import (
 	"github.com/stretchr/testify/require"
 
 	"spanwright/analysis/frame"
-	"spanwright/lang/model"
 )
 
 // solverOf resolves and prepares a model given as text.
@@ -16,16 +15,6 @@ func solverOf(t testing.TB, text string) *frame.Solver {
 	s, err := frame.Prepare(context.Background(), resolved(t, "test.span", text), nil)
 	require.NoError(t, err)
 	return s
-}
-
-func nodeNamed(t testing.TB, m *model.Model, name string) int {
-	for i := range m.Nodes {
-		if m.Nodes[i].Name == name {
-			return i
-		}
-	}
-	require.Fail(t, "no node "+name)
-	return -1
 }
 
 const crossedPanel = "model \"\" plane\n" + simpleSection + `
