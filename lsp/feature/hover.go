@@ -169,12 +169,19 @@ func (h *hover) name(d *resolve.Definition) {
 		h.combination(fullName(d))
 	case resolve.FamilyName:
 		h.family(d)
-	case resolve.LetName, resolve.ParameterName:
+	case resolve.LetName:
 		h.let(d)
+	case resolve.ParameterName:
+		h.parameter(d)
 	case resolve.GroupName:
 		h.group(d)
-	case resolve.PartName, resolve.PlaceName:
+	case resolve.PartName:
 		h.part(d)
+	case resolve.PlaceName:
+		h.place(d)
+	}
+	if len(d.Full) > 1 && d.Kind != resolve.ParameterName {
+		h.page.add("Shown for " + code(d.Full[0]) + ", the first of " + counted(len(d.Full), "place") + ".")
 	}
 	if d.Description != "" {
 		h.page.add(d.Description)

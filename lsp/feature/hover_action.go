@@ -52,6 +52,7 @@ func (h *hover) sums(e *analysis.Envelope) []string {
 		if math.Max(math.Abs(least[f]), math.Abs(most[f])) <= 1e-9*size {
 			continue
 		}
+		least[f], most[f] = cleaned(least[f], size), cleaned(most[f], size)
 		text := analysis.ForceNames[f] + " " + n.component(most[f], f, n.display.Force, true)
 		if most[f]-least[f] > 1e-9*size {
 			text = analysis.ForceNames[f] + " " + number(least[f], n.display.Force) + " … " + n.component(most[f], f, n.display.Force, true)
@@ -75,7 +76,7 @@ func (h *hover) largestMovement(e *analysis.Envelope) {
 	for _, r := range results {
 		for i := range n.model.Nodes {
 			u := r.Movement(i)
-			if d := math.Sqrt(u[0]*u[0] + u[1]*u[1] + u[2]*u[2]); d > size {
+			if d := math.Sqrt(u[0]*u[0] + u[1]*u[1] + u[2]*u[2]); d > (1+1e-9)*size {
 				size, node, in = d, i, r.Name()
 			}
 		}

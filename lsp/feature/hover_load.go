@@ -62,6 +62,15 @@ func (h *hover) resultantWords(total [6]float64) string {
 	return "no force, a moment " + strings.Join(parts, ", ")
 }
 
+// cleaned takes a value that is nothing but rounding, beside values of a size,
+// for zero.
+func cleaned(value, size float64) float64 {
+	if math.Abs(value) <= 1e-9*size {
+		return 0
+	}
+	return value
+}
+
 func largest(values []float64) float64 {
 	size := 0.0
 	for _, v := range values {
@@ -80,6 +89,10 @@ func (h *hover) actionWords(total [6]float64) string {
 	point, ok := lineOfAction(total)
 	if !ok {
 		return "It acts along no single line: its moment about its own direction stays."
+	}
+	far := largest(point[:])
+	for i := range point {
+		point[i] = cleaned(point[i], far)
 	}
 	length := func(v float64) string { return quantity.Write(v, m.Display.Length, 3) }
 	upright, level := math.Abs(total[2]) > (1-1e-9)*size, math.Abs(total[2]) < 1e-9*size
@@ -119,41 +132,30 @@ func (h *hover) shares(loadCase int, loads []model.Load) {
 	if !asked || state == nil {
 		return
 	}
-	headings := []string{"Taken alone, reactions"}
-	for _, f := range n.freedoms() {
-		headings = append(headings, analysis.ForceNames[f]+" "+n.forceUnit(f).Symbol+">")
-	}
-	h.page.add(table(headings, h.shareRows(state)))
+	h.page.add(h.components("Taken alone, reactions", analysis.ForceNames, n.forceUnit, shareRows(n.model, state)))
 	if n.results.OneWay() {
 		h.page.add("With one-way parts as they act under this load alone; shares of several loads do not add up.")
 	}
 }
 
-func (h *hover) shareRows(state *frame.State) [][]string {
-	n := h.numbers
-	var rows [][]string
-	var size [2]float64
-	nodes := analysis.SupportedNodes(n.model)
+// shareRows are the reactions of the supports that take part in a load.
+func shareRows(m *model.Model, state *frame.State) []bandRow {
+	var rows []bandRow
+	size := 0.0
+	nodes := analysis.SupportedNodes(m)
 	for _, node := range nodes {
 		r := state.Reaction(node)
-		size[0], size[1] = math.Max(size[0], largest(r[:3])), math.Max(size[1], largest(r[3:]))
+		size = math.Max(size, largest(r[:]))
 	}
 	for _, node := range nodes {
 		r := state.Reaction(node)
-		if size[0] > 0 && largest(r[:3]) < 1e-6*size[0] && largest(r[3:]) <= 1e-6*size[1] {
+		if largest(r[:]) <= 1e-6*size {
 			continue
 		}
-		row := []string{n.model.Nodes[node].Name}
-		for _, f := range n.freedoms() {
-			value := r[f]
-			if math.Abs(value) < 1e-9*size[f/3] {
-				value = 0
-			}
-			row = append(row, n.component(value, f, n.forceUnit(f), false))
+		if len(rows) == mostCases {
+			return append(rows, bandRow{title: "… further supports", none: true})
 		}
-		if rows = append(rows, row); len(rows) == mostCases {
-			break
-		}
+		rows = append(rows, bandRow{title: m.Nodes[node].Name, values: r})
 	}
 	return rows
 }

@@ -3,7 +3,9 @@ package feature
 import (
 	"encoding/base64"
 	"fmt"
+	"math"
 	"strings"
+	"unicode/utf8"
 
 	"spanwright/analysis"
 	"spanwright/analysis/diagram"
@@ -17,6 +19,9 @@ const (
 	diagramWidth = 32
 	// mostPicture bounds a picture: clients drop it where a hover gets too long.
 	mostPicture = 60_000
+	// leastSag is the part of its length by which a bar may sag as a beam: beyond,
+	// movements are not small and a beam's equations do not hold.
+	leastSag = 20
 )
 
 func (h *hover) member(d *resolve.Definition) {
@@ -41,10 +46,12 @@ func (h *hover) member(d *resolve.Definition) {
 	}
 	rows, governs := h.governing(envelopes, member)
 	h.page.add(table([]string{envelopes[0].Name() + " governs", "value>", "where", "in", ""}, rows))
-	if len(rows) == 0 {
+	switch {
+	case len(rows) == 0:
 		h.page.add("No force in " + envelopes[0].Name() + ".")
-	}
-	if governs >= 0 {
+	case n.model.Members[member].Kind == model.Bar:
+		h.page.add(h.ownBending(envelopes[0], member))
+	default:
 		h.diagrams(member, governs)
 	}
 	h.ownStiffness(member)
@@ -113,7 +120,7 @@ func (h *hover) governing(envelopes []*analysis.Envelope, member int) (rows [][]
 		rows = append(rows, []string{g.Quantity.String(), quantity.Write(g.Value, n.unitOf(g.Quantity), 3),
 			placeWords(n.model, member, g.At), code(n.name(g.Governed)), note})
 	}
-	list := envelopes[0].Governing(member)
+	list := n.governing(envelopes[0], member)
 	for i := range list {
 		g := &list[i]
 		if g.Quantity == analysis.Deflection && service != envelopes[0] {
@@ -125,13 +132,37 @@ func (h *hover) governing(envelopes []*analysis.Envelope, member int) (rows [][]
 		add(g)
 	}
 	if service != envelopes[0] {
-		for _, g := range service.Governing(member) {
+		for _, g := range n.governing(service, member) {
 			if g.Quantity == analysis.Deflection {
 				add(&g)
 			}
 		}
 	}
 	return rows, governs
+}
+
+// ownBending says how a bar bends under the loads on it, which carry to its ends
+// as on a simple beam and add nothing to what the structure does.
+func (h *hover) ownBending(e *analysis.Envelope, member int) string {
+	n := h.numbers
+	if sag, known := e.Along(member, analysis.Deflection); known && sag.Most.Value > n.model.Members[member].Length/leastSag {
+		return "The bar is too slender to carry loads across it, such as its weight, by bending: it hangs as a rope does, which is not worked out."
+	}
+	var parts []string
+	for _, q := range []analysis.Quantity{analysis.My, analysis.Mz, analysis.NormalStress, analysis.Deflection} {
+		band, known := e.Along(member, q)
+		if g := band.Largest(); known && math.Abs(g.Value) > 0 {
+			text := q.String() + " " + quantity.Write(g.Value, n.unitOf(q), 3)
+			if q == analysis.Deflection {
+				text += " (" + spanRatio(n.model.Members[member].Length, g.Value) + ")"
+			}
+			parts = append(parts, text)
+		}
+	}
+	if len(parts) < 3 {
+		return "" // nothing but the axial stress, which the table has
+	}
+	return "With the bending of loads on the bar itself, its weight among them, as on a simple beam: " + strings.Join(parts, ", ") + "."
 }
 
 // placeWords writes a place along a member: "at B", "3.72 m".
@@ -158,7 +189,12 @@ func (h *hover) diagrams(member, result int) {
 		}
 	}
 	var lines []string
+	width := 0
 	for _, c := range courses {
+		width = max(width, utf8.RuneCountInString(c.Label))
+	}
+	for _, c := range courses {
+		c.Label += strings.Repeat(" ", width-utf8.RuneCountInString(c.Label))
 		lines = append(lines, diagram.Text(c, diagramWidth))
 	}
 	h.page.add("In "+code(r.Name())+":", block(strings.Join(lines, "\n")))
@@ -229,8 +265,8 @@ func (h *hover) worst(e *analysis.Envelope, members []int) {
 		if member < 0 {
 			continue
 		}
-		for _, g := range e.Governing(member) {
-			if b, ok := best[g.Quantity]; !ok || abs(g.Value) > abs(b.Value) {
+		for _, g := range n.governing(e, member) {
+			if b, ok := best[g.Quantity]; !ok || math.Abs(g.Value) > (1+1e-9)*math.Abs(b.Value) { // of equals the first
 				best[g.Quantity] = struct {
 					analysis.Governing
 					member int
@@ -248,44 +284,10 @@ func (h *hover) worst(e *analysis.Envelope, members []int) {
 		if b.Share > 0 {
 			note = percent(b.Share) + " of yield"
 		}
-		rows = append(rows, []string{q.String(), quantity.Write(b.Value, n.unitOf(q), 3), n.model.Members[b.member].Name + " " + placeWords(n.model, b.member, b.At), code(n.name(b.Governed)), note})
+		rows = append(rows, []string{q.String(), quantity.Write(b.Value, n.unitOf(q), 3), n.model.Members[b.member].Name + ", " + placeWords(n.model, b.member, b.At), code(n.name(b.Governed)), note})
 	}
 	h.page.add(table([]string{"Largest in " + e.Name(), "value>", "where", "in", ""}, rows))
 }
 
 // mostAsked bounds the members that a hover looks through.
 const mostAsked = 300
-
-func abs(x float64) float64 {
-	if x < 0 {
-		return -x
-	}
-	return x
-}
-
-func (h *hover) part(d *resolve.Definition) {
-	h.page.add(fmt.Sprintf("**%s** · %s", d.Name, d.Kind))
-	if d.Kind == resolve.PartName {
-		var places []string
-		for _, p := range h.model.Places {
-			places = append(places, p.Name)
-		}
-		if len(places) > 0 && len(places) <= 20 {
-			h.page.add("Placed parts of the model: " + strings.Join(places, ", "))
-		}
-		return
-	}
-	prefix := fullName(d) + "."
-	nodes, members := 0, 0
-	for i := range h.model.Nodes {
-		if strings.HasPrefix(h.model.Nodes[i].Name, prefix) {
-			nodes++
-		}
-	}
-	for i := range h.model.Members {
-		if strings.HasPrefix(h.model.Members[i].Name, prefix) {
-			members++
-		}
-	}
-	h.page.add(fmt.Sprintf("%s, %s; their names begin with %s", counted(nodes, "node"), counted(members, "member"), code(prefix)))
-}

@@ -91,13 +91,9 @@ func (h *hover) reactions(node int) {
 	if !supported(n.model, node) {
 		return
 	}
-	rows := h.bands(func(e *analysis.Envelope) [6]analysis.Band { return e.Reaction(node) },
-		func(r analysis.Result) [6]float64 { return r.Reaction(node) }, n.forceUnit)
-	headings := []string{"Reaction"}
-	for _, f := range n.freedoms() {
-		headings = append(headings, analysis.ForceNames[f]+" "+n.forceUnit(f).Symbol+">")
-	}
-	h.page.add(table(headings, rows))
+	h.page.add(h.bands("Reaction", analysis.ForceNames, n.forceUnit,
+		func(e *analysis.Envelope) [6]analysis.Band { return e.Reaction(node) },
+		func(r analysis.Result) [6]float64 { return r.Reaction(node) }))
 	h.page.add("What the support does to the structure, along the global axes." + h.turnNote())
 }
 
@@ -116,59 +112,97 @@ func supported(m *model.Model, node int) bool {
 // movements writes the movements of a node, envelopes first.
 func (h *hover) movements(node int) {
 	n := h.numbers
-	rows := h.bands(func(e *analysis.Envelope) [6]analysis.Band { return e.Movement(node) },
-		func(r analysis.Result) [6]float64 { return r.Movement(node) }, n.movementUnit)
-	headings := []string{"Movement"}
-	for _, f := range n.freedoms() {
-		headings = append(headings, analysis.MovementNames[f]+" "+n.movementUnit(f).Symbol+">")
-	}
-	h.page.add(table(headings, rows))
+	h.page.add(h.bands("Movement", analysis.MovementNames, n.movementUnit,
+		func(e *analysis.Envelope) [6]analysis.Band { return e.Movement(node) },
+		func(r analysis.Result) [6]float64 { return r.Movement(node) }))
 }
 
-// bands writes the rows of six components: most and least of each envelope with
-// the result that gives them, then each case.
-func (h *hover) bands(of func(*analysis.Envelope) [6]analysis.Band, single func(analysis.Result) [6]float64, unit func(int) quantity.Unit) [][]string {
-	n := h.numbers
-	var rows [][]string
-	scale := 0.0
-	cell := func(g analysis.Governed, f int) string {
-		if math.Abs(g.Value) <= 1e-9*scale {
-			return "0"
-		}
-		return n.component(g.Value, f, unit(f), false) + " " + code(n.name(g))
+// bandRow is a row of six components, each with the result that gives it where
+// the row is one of an envelope.
+type bandRow struct {
+	title  string
+	values [6]float64
+	in     [6]string
+	none   bool   // there are no numbers
+	note   string // what stands in their place
+}
+
+// bands writes a table of six components at a node: most and least of each
+// envelope with the result that gives them, then each case.
+func (h *hover) bands(title string, names [6]string, unit func(int) quantity.Unit,
+	of func(*analysis.Envelope) [6]analysis.Band, single func(analysis.Result) [6]float64) string {
+	return h.components(title, names, unit, h.bandRows(of, single))
+}
+
+// components writes a table of six components. One that is zero throughout has
+// no column.
+func (h *hover) components(title string, names [6]string, unit func(int) quantity.Unit, rows []bandRow) string {
+	var size [2]float64
+	for i := range rows {
+		size[0], size[1] = math.Max(size[0], largest(rows[i].values[:3])), math.Max(size[1], largest(rows[i].values[3:]))
 	}
-	for _, e := range n.envelopes() {
-		most, least := []string{"**" + e.Name() + "** most"}, []string{"**" + e.Name() + "** least"}
-		bands := of(e)
-		for _, f := range n.freedoms() {
-			scale = 0
-			for k := f / 3 * 3; k < f/3*3+3; k++ {
-				scale = math.Max(scale, math.Abs(bands[k].Largest().Value))
-			}
-			most = append(most, cell(bands[f].Most, f))
-			least = append(least, cell(bands[f].Least, f))
+	// A moment is rounding too where the forces make it at an arm of nothing.
+	size[1] = math.Max(size[1], 1e-3*size[0])
+	headings := []string{title}
+	cells := make([][]string, len(rows))
+	for i := range rows {
+		cells[i] = []string{rows[i].title}
+		if rows[i].none {
+			cells[i] = append(cells[i], rows[i].note)
 		}
-		rows = append(rows, most)
-		if len(e.Results()) > 1 {
-			rows = append(rows, least)
+	}
+	for _, f := range h.numbers.freedoms() {
+		zero := true
+		for i := range rows {
+			zero = zero && cleaned(rows[i].values[f], size[f/3]) == 0
+		}
+		if zero {
+			continue
+		}
+		headings = append(headings, names[f]+" "+unit(f).Symbol+">")
+		for i := range rows {
+			if !rows[i].none {
+				value := cleaned(rows[i].values[f], size[f/3])
+				cell := h.numbers.component(value, f, unit(f), false)
+				if value != 0 {
+					cell = strings.TrimSpace(cell + " " + code(rows[i].in[f]))
+				}
+				cells[i] = append(cells[i], cell)
+			}
+		}
+	}
+	if len(headings) == 1 {
+		return title + ": none in any result"
+	}
+	return table(headings, cells)
+}
+
+func (h *hover) bandRows(of func(*analysis.Envelope) [6]analysis.Band, single func(analysis.Result) [6]float64) []bandRow {
+	n := h.numbers
+	var rows []bandRow
+	for _, e := range n.envelopes() {
+		most, least := bandRow{title: "**" + e.Name() + "** most"}, bandRow{title: "**" + e.Name() + "** least"}
+		for f, b := range of(e) {
+			most.values[f], most.in[f] = b.Most.Value, n.name(b.Most)
+			least.values[f], least.in[f] = b.Least.Value, n.name(b.Least)
+		}
+		if len(e.Results()) == 1 {
+			most.title = "**" + e.Name() + "**"
+			rows = append(rows, most)
+		} else {
+			rows = append(rows, most, least)
 		}
 	}
 	for i := range n.model.Cases {
-		if i == mostCases {
-			rows = append(rows, []string{fmt.Sprintf("… %d more cases", len(n.model.Cases)-i)})
-			break
-		}
 		r := n.results.Case(i)
-		if r.Problem() != "" {
-			rows = append(rows, []string{r.Name(), "no numbers"})
-			continue
+		switch {
+		case i == mostCases:
+			return append(rows, bandRow{title: fmt.Sprintf("… %d more cases", len(n.model.Cases)-i), none: true})
+		case r.Problem() != "":
+			rows = append(rows, bandRow{title: r.Name(), none: true, note: "no numbers"})
+		default:
+			rows = append(rows, bandRow{title: r.Name(), values: single(r)})
 		}
-		row := []string{r.Name()}
-		values := single(r)
-		for _, f := range n.freedoms() {
-			row = append(row, n.component(values[f], f, unit(f), false))
-		}
-		rows = append(rows, row)
 	}
 	return rows
 }

@@ -141,8 +141,7 @@ func withUnit(n *syntax.NumberNode, around []syntax.Node) (amount syntax.Node, s
 }
 
 // compounds are usual units that have no symbol of their own.
-var compounds = []string{"kN/m", "N/mm", "kN/mm", "kN/m2", "N/mm2", "kN/m3", "kg/m", "kg/m2", "kg/m3", "t/m3", "lb/ft", "lb/ft3", "m/s2", "ft/s2",
-	"kN/mrad", "kNm/m", "K/m"}
+var compounds = []string{"kN/m", "N/mm", "kN/mm", "kN/m2", "N/mm2", "kN/m3", "kg/m", "kg/m2", "kg/m3", "t/m3", "lb/ft", "lb/ft3", "m/s2", "ft/s2", "K/m"}
 
 // inUnits writes a quantity in all units that give a number that people can
 // read, but not as it is written already.
@@ -163,7 +162,7 @@ func inUnits(q quantity.Quantity, written string) []string {
 	for _, u := range units {
 		n := math.Abs(q.Value / u.Factor)
 		text := quantity.Write(q.Value, u, 5)
-		if q.Value != 0 && (n < 1e-3 || n >= 1e7) || strings.ReplaceAll(text, "−", "-") == written {
+		if n < 1e-2 || n >= 1e7 || strings.ReplaceAll(text, "−", "-") == written {
 			continue
 		}
 		list = append(list, text)
@@ -200,23 +199,14 @@ func kindOf(u quantity.Unit) string {
 	return words
 }
 
-// let writes the value of a named value, or of a part's parameter in its first
-// place.
+// let writes the value of a named value.
 func (h *hover) let(d *resolve.Definition) {
 	i := indexOf(h.model.Lets, fullName(d), func(l *model.Let) string { return l.Name })
-	if i < 0 {
-		text := "**" + d.Name + "** · " + d.Kind.String()
-		if d.Part != "" {
-			text += " of part " + d.Part
-		}
-		h.page.add(text)
+	if i < 0 || len(h.model.Lets[i].Values) == 0 {
+		h.page.add("**" + d.Name + "** · a value that cannot be worked out: its expression has an error.")
 		return
 	}
 	l := &h.model.Lets[i]
-	if len(l.Values) == 0 {
-		h.page.add("**" + l.Name + "** has no value: its expression has an error.")
-		return
-	}
 	value := showAll(h.model.Display, l.Values)
 	h.page.add("**" + l.Name + "** = " + value)
 	if len(l.Values) == 1 {

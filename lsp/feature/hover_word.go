@@ -156,7 +156,6 @@ var meanings = map[syntax.Kind]map[string]string{
 }
 
 var memberWords = map[string]string{
-	"of":          "the section.",
 	"hinge":       "passes on no bending moment at this end.",
 	"release":     "does not pass on the forces named at this end: N Vy Vz T My Mz, in member axes.",
 	"joint":       "passes on the forces named by a stiffness: a semi-rigid joint.",

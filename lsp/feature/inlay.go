@@ -228,7 +228,7 @@ func (h *hinter) governing(e *analysis.Envelope, member int) (label, tooltip str
 	share := 0.0
 	tooltip = "Governs in " + e.Name() + ":"
 	bar := n.model.Members[member].Kind == model.Bar
-	list := e.Governing(member)
+	list := n.governing(e, member)
 	for i := range list {
 		g := &list[i]
 		moment := g.Quantity == analysis.My || g.Quantity == analysis.Mz
@@ -252,7 +252,11 @@ func (h *hinter) governing(e *analysis.Envelope, member int) (label, tooltip str
 	}
 	tooltip += fmt.Sprintf("\n- %s %s at %s in %s", shown.Quantity, quantity.Write(shown.Value, u, 3), analysis.PlaceWords(n.model, member, shown.At), n.name(shown.Governed))
 	if share > 0 {
-		tooltip += "\n- elastic stress: " + percent(share) + " of yield"
+		kind := "elastic stress"
+		if bar {
+			kind = "axial stress"
+		}
+		tooltip += "\n- " + kind + ": " + percent(share) + " of yield"
 	}
 	return label, tooltip
 }
@@ -264,13 +268,8 @@ func (h *hinter) limits(m *model.Model) {
 		if !h.here(l.Origin) {
 			continue
 		}
-		for _, answer := range h.numbers.solution.Limits {
-			solved := &h.numbers.model.Limits[answer.Index]
-			if solved.Text != l.Text {
-				continue
-			}
-			h.limit(l, &answer)
-			break
+		if answer, ok := h.numbers.limitAnswer(l); ok {
+			h.limit(l, answer)
 		}
 	}
 }

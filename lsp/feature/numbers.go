@@ -1,8 +1,10 @@
 package feature
 
 import (
+	"cmp"
 	"fmt"
 	"math"
+	"slices"
 
 	"spanwright/analysis"
 	"spanwright/lang/model"
@@ -153,4 +155,26 @@ func spanRatio(length, deflection float64) string {
 		return ""
 	}
 	return "length/" + quantity.Number(math.Abs(length/deflection), 3)
+}
+
+// governing returns what governs a member. Of a bar it is the axial force with
+// its stress: how the bar bends between its ends under loads of its own is no
+// matter of the structure.
+func (n *numbers) governing(e *analysis.Envelope, member int) []analysis.Governing {
+	list := e.Governing(member)
+	b := &n.model.Members[member]
+	if b.Kind != model.Bar || b.Section < 0 {
+		return list
+	}
+	list = slices.DeleteFunc(list, func(g analysis.Governing) bool { return g.Quantity != analysis.N })
+	s := &n.model.Sections[b.Section]
+	if len(list) == 0 || s.A == 0 {
+		return nil
+	}
+	stress := slices.MaxFunc(list, func(a, b analysis.Governing) int { return cmp.Compare(math.Abs(a.Value), math.Abs(b.Value)) })
+	stress.Quantity, stress.Value, stress.Share = analysis.NormalStress, stress.Value/s.A, 0
+	if fy := n.model.Materials[s.Material].Yield; fy > 0 {
+		stress.Share = math.Abs(stress.Value) / fy
+	}
+	return append(list, stress)
 }
