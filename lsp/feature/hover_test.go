@@ -174,12 +174,36 @@ func TestLineOfAction(t *testing.T) {
 	assert.False(t, ok)
 }
 
+// BenchmarkHover measures hovers in settled models. Aim: below 10 ms for 10,000
+// members.
 func BenchmarkHover(b *testing.B) {
-	d := open(b, "/building.span", generate.TenThousand.Text())
-	for _, place := range []string{"support |n0_1_1 fixed", "|support n0_1_1 fixed", "beam |c1_1_1 =", "case |Q", "limit |ux", "|model", "x1_1_0: |9 kN"} {
+	for _, building := range []generate.Building{generate.Thousand, generate.TenThousand} {
+		d := open(b, "/building.span", building.Text())
+		for _, place := range []string{"node |n1_1_1 =", "|support n0_1_1 fixed", "beam |c1_1_1 =", "case |Q", "limit |ux", "|model", "x1_1_0: |9 kN"} {
+			b.Run(fmt.Sprintf("%d/%s", building.Members(), strings.ReplaceAll(place, " ", "_")), func(b *testing.B) {
+				at := d.at(place)
+				for b.Loop() {
+					_, ok := HoverAt(b.Context(), d.snapshot(), d.path, at, HoverOptions{})
+					require.True(b, ok)
+				}
+			})
+		}
+	}
+}
+
+// BenchmarkHoverAfterEdit measures the first hover of a version: what is only
+// made when it is asked for is made then.
+func BenchmarkHoverAfterEdit(b *testing.B) {
+	for _, place := range []string{"node |n1_1_1 =", "beam |c1_1_1 =", "x1_2_0: |7 kN"} {
 		b.Run(strings.ReplaceAll(place, " ", "_"), func(b *testing.B) {
-			at := d.at(place)
+			d := open(b, "/building.span", generate.TenThousand.Text())
+			at, n := d.at(place), 0
 			for b.Loop() {
+				b.StopTimer()
+				d.edit([]string{"9 kN/m down", "8 kN/m down"}[n%2], []string{"9 kN/m down", "8 kN/m down"}[1-n%2])
+				d.settle()
+				n++
+				b.StartTimer()
 				_, ok := HoverAt(b.Context(), d.snapshot(), d.path, at, HoverOptions{})
 				require.True(b, ok)
 			}
