@@ -58,6 +58,14 @@ func everything(s *workspace.Snapshot, path string, offset int) {
 		References(s, path, at, true)
 		Highlights(s, path, at)
 		Selections(tree, at)
+		if item, ok := TypeItem(s, path, at); ok {
+			Supertypes(s, item)
+			Subtypes(s, item)
+		}
+		if item, ok := PathItem(s, path, at); ok {
+			LoadsTo(s, item)
+			LoadsFrom(s, item)
+		}
 		if _, _, err := PrepareRename(s, path, at); err == nil {
 			Rename(s, path, at, "renamed")
 		}
