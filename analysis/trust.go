@@ -45,7 +45,8 @@ func (r *Results) audit(ctx context.Context, previous *Results) error {
 	if softest := r.solver.Softest(); softest > 0 {
 		r.trust.Softest = softest
 	}
-	if previous != nil && previous.solver != nil && r.solver.Path().Kind == frame.LoadsOnly {
+	kind := r.solver.Path().Kind
+	if previous != nil && previous.solver != nil && (kind == frame.LoadsOnly || kind == frame.Updated) {
 		r.trust.Condition = previous.trust.Condition // the factor is the same
 	} else {
 		condition, err := r.solver.Condition(ctx)

@@ -117,7 +117,9 @@ func writeCase(page *strings.Builder, c verified, answers []answer) {
 		if a.Published != nil {
 			printed = rounded(*a.Published, digits)
 		}
-		result := rounded(a.got, a.digits())
+		// A value half-way between two roundings is to fall on the same side on
+		// every machine: away from zero.
+		result := rounded(a.got*(1+1e-11), a.digits())
 		if a.Value == 0 && math.Abs(a.got) <= a.Atol {
 			result = "0"
 		}

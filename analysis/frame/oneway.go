@@ -79,7 +79,7 @@ func (o *oneWay) structure(ctx context.Context, st status) (*Structure, error) {
 	}
 	s, err := newIn(o.all.model, st)
 	if err == nil {
-		err = s.Factor(ctx, o.all)
+		err = s.reuse(ctx, o.all)
 	}
 	if ctx.Err() != nil {
 		return nil, ctx.Err()

@@ -9,12 +9,17 @@ type PathKind int
 const (
 	Nothing   PathKind = iota // no unknowns: statics alone
 	LoadsOnly                 // the factor served again: one solve
+	Updated                   // the factor served again, with what has changed beside it
 	Numeric                   // the symbolic phase served again
 	Symbolic                  // everything anew
 )
 
 // Path is the way that a solve took.
-type Path struct{ Kind PathKind }
+type Path struct {
+	Kind PathKind
+	// Rank is that of the change beside the factor, for Updated.
+	Rank int
+}
 
 // String returns the way in words.
 func (p Path) String() string {
@@ -23,6 +28,8 @@ func (p Path) String() string {
 		return "nothing to factorise"
 	case LoadsOnly:
 		return "loads only: factor kept"
+	case Updated:
+		return fmt.Sprintf("few stiffnesses changed: factor kept, change of rank %d beside it", p.Rank)
 	case Numeric:
 		return "same connections: order kept, factorised anew"
 	case Symbolic:

@@ -3,6 +3,7 @@ package frame
 import (
 	"context"
 	"math"
+	"slices"
 
 	"spanwright/analysis/element"
 	"spanwright/analysis/sparse"
@@ -17,6 +18,7 @@ func (s *Structure) Factor(ctx context.Context, previous *Structure) error {
 		s.path = Path{Kind: Nothing}
 		return nil
 	}
+	s.update = nil
 	pattern := s.pattern()
 	if previous != nil && previous.symbolic != nil && previous.symbolic.Fits(pattern) {
 		s.symbolic, s.path = previous.symbolic, Path{Kind: Numeric}
@@ -26,6 +28,9 @@ func (s *Structure) Factor(ctx context.Context, previous *Structure) error {
 			return err
 		}
 		s.path = Path{Kind: Symbolic}
+	}
+	if err := ctx.Err(); err != nil {
+		return err
 	}
 	s.matrix = sparse.NewMatrix(s.symbolic)
 	s.assemble()
@@ -138,7 +143,16 @@ func (s *Structure) movedSupports(l *loading) []vector6 {
 
 // substitute replaces right-hand sides, one behind the other, by the unknowns.
 func (s *Structure) substitute(ctx context.Context, x []float64, count int) error {
-	return s.factor.Solve(ctx, x, count)
+	if s.unknowns == 0 || count == 0 {
+		return nil
+	}
+	if err := s.factor.Solve(ctx, x, count); err != nil {
+		return err
+	}
+	if s.update != nil {
+		s.update.correct(x, count)
+	}
+	return nil
 }
 
 // solveAll solves several loadings together.
@@ -146,21 +160,34 @@ func (s *Structure) solveAll(ctx context.Context, list []loading) ([]*State, err
 	n := s.unknowns
 	right := make([]float64, n*len(list))
 	for i := range list {
+		if err := ctx.Err(); err != nil {
+			return nil, err
+		}
 		s.rightSide(&list[i], right[i*n:(i+1)*n])
 	}
 	x := append([]float64(nil), right...)
-	if n > 0 {
-		if err := s.factor.Solve(ctx, x, len(list)); err != nil {
+	if err := s.substitute(ctx, x, len(list)); err != nil {
+		return nil, err
+	}
+	errors, err := s.refine(ctx, right, x, len(list))
+	if err != nil {
+		return nil, err
+	}
+	if s.update != nil && len(list) > 0 && !(slices.Max(errors) <= mostOfUpdate) {
+		// The change is too large for the old factor.
+		if err := s.Factor(ctx, s.update.base); err != nil {
 			return nil, err
 		}
+		return s.solveAll(ctx, list)
 	}
 	states := make([]*State, len(list))
 	for i := range list {
 		states[i] = s.stateOf(&list[i], x[i*n:(i+1)*n])
-		states[i].backward = s.refine(ctx, right[i*n:(i+1)*n], states[i].x)
-	}
-	for i := range states {
+		states[i].backward = errors[i]
 		s.finish(states[i])
+		if err := s.rebalance(ctx, right[i*n:(i+1)*n], states[i]); err != nil {
+			return nil, err
+		}
 	}
 	return states, ctx.Err()
 }
@@ -169,46 +196,131 @@ func (s *Structure) solveAll(ctx context.Context, list []loading) ([]*State, err
 // nothing worth its price.
 const enough = 1e-14
 
-// refine improves a solution by at most two steps of iterative refinement and
-// returns its componentwise backward error (Oettli and Prager 1964; Higham,
-// Accuracy and Stability of Numerical Algorithms, 2nd ed., theorem 7.3).
-func (s *Structure) refine(ctx context.Context, b, x []float64) float64 {
-	if len(x) == 0 {
-		return 0
+// refine improves solutions by at most two steps of iterative refinement, all
+// that need it together, and returns their componentwise backward errors
+// (Oettli and Prager 1964; Higham, Accuracy and Stability of Numerical
+// Algorithms, 2nd ed., theorem 7.3).
+func (s *Structure) refine(ctx context.Context, b, x []float64, count int) ([]float64, error) {
+	n := s.unknowns
+	errors := make([]float64, count)
+	if n == 0 {
+		return errors, nil
 	}
-	residual, size := make([]float64, len(x)), make([]float64, len(x))
-	measure := func() float64 {
-		s.matrix.Residual(b, x, residual, size)
-		worst, largest := 0.0, 0.0
-		for _, v := range size {
-			largest = max(largest, v)
-		}
-		for i := range residual {
-			// Rows that carry next to nothing are measured against the others.
-			worst = max(worst, math.Abs(residual[i])/max(size[i], 1e-12*largest, math.SmallestNonzeroFloat64))
-		}
-		return worst
+	residuals, size := make([]float64, n*count), make([]float64, n)
+	measure := func(i int, x []float64) float64 {
+		return s.backwardError(b[i*n:(i+1)*n], x, residuals[i*n:(i+1)*n], size)
 	}
-	error := measure()
+	var rough []int // solutions that may be bettered
+	for i := range count {
+		if errors[i] = measure(i, x[i*n:(i+1)*n]); errors[i] > enough {
+			rough = append(rough, i)
+		}
+	}
 	for range 2 {
-		if error <= enough || ctx.Err() != nil {
+		if len(rough) == 0 {
 			break
 		}
-		if s.factor.Solve(ctx, residual, 1) != nil {
-			break
+		steps := make([]float64, n*len(rough))
+		for k, i := range rough {
+			copy(steps[k*n:(k+1)*n], residuals[i*n:(i+1)*n])
 		}
-		better := make([]float64, len(x))
-		for i := range x {
-			better[i] = x[i] + residual[i]
+		if err := s.substitute(ctx, steps, len(rough)); err != nil {
+			return nil, err
 		}
-		old := append([]float64(nil), x...)
-		copy(x, better)
-		if e := measure(); e < error {
-			error = e
-			continue
+		still := rough[:0]
+		for k, i := range rough {
+			better, old := steps[k*n:(k+1)*n], x[i*n:(i+1)*n]
+			for u := range better {
+				better[u] += old[u]
+			}
+			if e := measure(i, better); e < errors[i] {
+				errors[i] = e
+				copy(old, better)
+				if e > enough {
+					still = append(still, i)
+				}
+			}
 		}
-		copy(x, old)
-		break
+		rough = still
 	}
-	return error
+	return errors, nil
+}
+
+// balanced is the residual of loads and reactions that needs no mending.
+const balanced = 1e-12
+
+// rebalance mends a state whose loads and reactions do not balance to the last
+// digits. That happens where very stiff members move as rigid bodies on soft
+// springs: the rounding of an entry of K is then no longer small against the
+// springs. Refinement helps, if the residual is worked out member by member from
+// natural deformations, because such end forces are in balance whatever the
+// movements.
+func (s *Structure) rebalance(ctx context.Context, right []float64, st *State) error {
+	for range 3 {
+		if st.residual <= balanced || len(st.x) == 0 {
+			return nil
+		}
+		step := s.resistance(st.x)
+		for i := range step {
+			step[i] = right[i] - step[i]
+		}
+		if err := s.substitute(ctx, step, 1); err != nil {
+			return err
+		}
+		for i := range step {
+			step[i] += st.x[i]
+		}
+		better := s.stateOf(&st.loading, step)
+		better.backward = st.backward
+		s.finish(better)
+		if !(better.residual < st.residual) {
+			return nil
+		}
+		*st = *better
+	}
+	return nil
+}
+
+// resistance returns K x from natural deformations.
+func (s *Structure) resistance(x []float64) []float64 {
+	moved := s.movedBodies(x)
+	forces := make([]vector6, len(s.bodies))
+	for i := range s.segments {
+		g := &s.segments[i]
+		f := g.element.EndForces(g.ends(moved[g.bodies[0]], moved[g.bodies[1]]), nil)
+		for end := range 2 {
+			on := g.onBody(end, vector6(f[6*end:6*end+6]))
+			for k := range on {
+				forces[g.bodies[end]][k] += on[k]
+			}
+		}
+	}
+	for i := range s.holds {
+		if h := &s.holds[i]; h.stiffness > 0 && !s.status.lifts(i) {
+			row := h.row
+			scale(&row, h.stiffness*dot6(&h.row, &moved[h.body]))
+			for k := range row {
+				forces[h.body][k] += row[k]
+			}
+		}
+	}
+	out := make([]float64, len(x))
+	for b := range s.bodies {
+		for i := range s.bodies[b].basis {
+			out[s.start[b]+i] = dot6(&s.bodies[b].basis[i], &forces[b])
+		}
+	}
+	return out
+}
+
+// backwardError returns that of a solution, and fills its residual. size is room
+// for work.
+func (s *Structure) backwardError(b, x, residual, size []float64) float64 {
+	s.matrix.Residual(b, x, residual, size)
+	worst, largest := 0.0, slices.Max(size)
+	for i := range residual {
+		// Rows that carry next to nothing are measured against the others.
+		worst = max(worst, math.Abs(residual[i])/max(size[i], 1e-12*largest, math.SmallestNonzeroFloat64))
+	}
+	return worst
 }

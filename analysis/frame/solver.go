@@ -28,10 +28,8 @@ func Prepare(ctx context.Context, m *model.Model, previous *Solver) (*Solver, er
 	if previous != nil {
 		old = previous.structure
 	}
-	if !s.takeOver(old) {
-		if err := s.Factor(ctx, old); err != nil {
-			return nil, err
-		}
+	if err := s.reuse(ctx, old); err != nil {
+		return nil, err
 	}
 	solver := &Solver{structure: s, loadings: s.loadings()}
 	for i := range solver.loadings {
@@ -59,13 +57,15 @@ func (v *Solver) Path() Path { return v.structure.path }
 // looked at, and 1 where none gave cause; below [Soft] it deserves a warning.
 func (v *Solver) Softest() float64 { return v.structure.softest }
 
-// Condition estimates the condition of the scaled stiffness in the 1-norm.
+// Condition estimates the condition of the scaled stiffness in the 1-norm; of an
+// updated stiffness, that before the update, which it is near to.
 func (v *Solver) Condition(ctx context.Context) (float64, error) {
 	s := v.structure
 	if s.unknowns == 0 {
 		return 1, nil
 	}
-	return s.factor.Condition(ctx, s.matrix)
+	base := s.factorised()
+	return base.factor.Condition(ctx, base.matrix)
 }
 
 // Cases solves all load cases. With one-way parts each finds its own; errs[i] is

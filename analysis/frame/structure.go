@@ -29,6 +29,7 @@ type Structure struct {
 	symbolic *sparse.Symbolic
 	matrix   *sparse.Matrix
 	factor   *sparse.Factor
+	update   *update // what the stiffness has more than the factor; nil for nothing
 	path     Path
 	softest  float64 // relative energy of the softest suspicious shape; 1 where none was
 }
@@ -94,7 +95,8 @@ func (s *Structure) Freedoms() int { return s.unknowns }
 // Model returns the model that the structure was made of.
 func (s *Structure) Model() *model.Model { return s.model }
 
-// typicalLength is the mean length of the members.
+// typicalLength is the mean length of the members, rounded to a power of two so
+// that weighing with it is exact, and so that it stays when one member changes.
 func typicalLength(m *model.Model) float64 {
 	sum, count := 0.0, 0
 	for i := range m.Members {
@@ -106,7 +108,7 @@ func typicalLength(m *model.Model) float64 {
 	if count == 0 {
 		return 1
 	}
-	return sum / float64(count)
+	return math.Exp2(math.Round(math.Log2(sum / float64(count))))
 }
 
 // number gives the free coordinates of the bodies their places among the
