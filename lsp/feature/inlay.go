@@ -171,31 +171,38 @@ func (h *hinter) supports(m *model.Model) {
 }
 
 // reaction writes the largest part of each force and moment that a support
-// gives: horizontal, upright, moments.
+// gives, of a force in both directions: whether a support is ever pulled matters
+// more than by how much it is pressed.
 func (h *hinter) reaction(e *analysis.Envelope, node int) (label, tooltip string) {
 	n := h.numbers
 	bands := e.Reaction(node)
-	largest := [2]float64{}
+	var size [2]float64
 	for f, b := range bands {
-		largest[f/3] = math.Max(largest[f/3], math.Abs(b.Largest().Value))
+		size[f/3] = math.Max(size[f/3], math.Abs(b.Largest().Value))
 	}
+	size[1] = math.Max(size[1], 1e-3*size[0]) // what is less at an arm of 1 mm is rounding
 	var parts []string
 	tooltip = "Largest reactions in " + e.Name() + " (what the support does to the structure):"
 	for _, f := range n.freedoms() {
-		g := bands[f].Largest()
-		if math.Abs(g.Value) <= 1e-9*largest[f/3] {
-			continue
+		sides := []analysis.Governed{bands[f].Largest()}
+		if other := bands[f].Least; f < 3 && bands[f].Most.Value > 0 && other.Value < 0 {
+			if sides[0] == other {
+				other = bands[f].Most
+			}
+			sides = append(sides, other)
 		}
-		u := n.forceUnit(f)
-		text := n.component(g.Value, f, u, true)
-		switch arrow := strings.TrimSpace(n.arrow(g.Value, f)); {
-		case arrow == "":
-			text = analysis.ForceNames[f] + " " + text
-		case f < 3:
-			text = arrow + " " + quantity.Write(math.Abs(g.Value), u, 3)
+		var texts []string
+		for _, g := range sides {
+			value := cleaned(g.Value, size[f/3])
+			if n.component(value, f, n.forceUnit(f), false) == "0" {
+				continue
+			}
+			texts = append(texts, n.directed(value, f))
+			tooltip += fmt.Sprintf("\n- %s %s in %s", analysis.ForceNames[f], n.component(value, f, n.forceUnit(f), true), n.name(g))
 		}
-		parts = append(parts, text)
-		tooltip += fmt.Sprintf("\n- %s %s in %s", analysis.ForceNames[f], n.component(g.Value, f, u, true), n.name(g))
+		if len(texts) > 0 {
+			parts = append(parts, strings.Join(texts, " ")+" "+n.forceUnit(f).Symbol)
+		}
 	}
 	return strings.Join(parts, "  "), tooltip
 }
@@ -282,7 +289,9 @@ func (h *hinter) limit(l *model.Limit, answer *analysis.Limit) {
 	}
 	u := analysis.MeasureUnit(n.display, l)
 	label := fmt.Sprintf("%s of %s", number(answer.Governs.Value, u), quantity.Write(answer.Governs.Bound, u, 3))
-	if share := analysis.ShareWords(answer.Governs.Ratio); share != "" {
+	if answer.Governs.Bound == 0 {
+		label = quantity.Write(answer.Governs.Value, u, 3) // there is no share of nothing
+	} else if share := analysis.ShareWords(answer.Governs.Ratio); share != "" {
 		label += " · " + share
 	}
 	if !answer.Holds {
@@ -319,11 +328,7 @@ func (h *hinter) resultant(total [6]float64) string {
 		if math.Abs(total[f]) < 1e-9*largest {
 			continue
 		}
-		if a := strings.TrimSpace(n.arrow(total[f], f)); a != "" {
-			parts = append(parts, a+" "+quantity.Write(math.Abs(total[f]), n.display.Force, 3))
-		} else {
-			parts = append(parts, analysis.ForceNames[f]+" "+quantity.Write(total[f], n.display.Force, 3))
-		}
+		parts = append(parts, n.directed(total[f], f)+" "+n.display.Force.Symbol)
 	}
 	return strings.Join(parts, "  ")
 }

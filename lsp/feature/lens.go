@@ -149,8 +149,13 @@ func forceWords(m *model.Model, total [6]float64) string {
 			text += ", "
 		}
 		text += name + " " + quantity.Write(total[i], u, 3)
-		if i == 2 {
+		switch {
+		case i == 2:
 			text += upOrDown(total[i])
+		case i == 0 && m.Plane && total[i] < 0:
+			text += " ←"
+		case i == 0 && m.Plane:
+			text += " →"
 		}
 	}
 	return text

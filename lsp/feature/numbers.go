@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"slices"
+	"strings"
 
 	"spanwright/analysis"
 	"spanwright/lang/model"
@@ -134,6 +135,16 @@ func (n *numbers) arrow(value float64, freedom int) string {
 		return pair[1]
 	}
 	return pair[0]
+}
+
+// directed writes the size of a force with its arrow in front, or a moment, or
+// a force that has no arrow, with its sign behind its name.
+func (n *numbers) directed(value float64, freedom int) string {
+	u := n.forceUnit(freedom)
+	if arrow := strings.TrimSpace(n.arrow(value, freedom)); arrow != "" {
+		return arrow + " " + number(math.Abs(value), u)
+	}
+	return analysis.ForceNames[freedom] + " " + number(value, u)
 }
 
 // name returns the name of the result that governs.
