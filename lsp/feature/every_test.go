@@ -91,3 +91,22 @@ func TestNowhere(t *testing.T) {
 	require.Nil(t, Hints(d.snapshot(), "/nowhere.span", source.Span{}, AllHints()))
 	require.False(t, strings.Contains(d.hover("node |A ="), "NaN"))
 }
+
+// No text makes any feature fail.
+func FuzzEverything(f *testing.F) {
+	for _, name := range models(f) {
+		text, err := os.ReadFile(name)
+		require.NoError(f, err)
+		if len(text) < 6000 { // larger ones only make it slow
+			f.Add(string(text), len(text)/2)
+		}
+	}
+	f.Add(frames, 100)
+	f.Add(shed, 20)
+	f.Add("case Q {\n{", 3)
+	f.Add("let a = (((1 m", 9)
+	f.Fuzz(func(t *testing.T, text string, offset int) {
+		w := library(t, map[string]string{"/f.span": text})
+		everything(w.Snapshot(), "/f.span", offset)
+	})
+}

@@ -22,7 +22,7 @@ func Folds(tree *syntax.Tree) []Fold {
 	for i := range tree.Units {
 		u := &tree.Units[i]
 		first, last := file.LineAt(u.Start), file.LineAt(u.End)
-		if closing := tree.Closing(i); closing >= 0 {
+		if closing := closingOf(tree, i); closing >= 0 {
 			// The brace stays in sight.
 			last = file.LineAt(tree.Units[closing].Start) - 1
 		}
@@ -49,4 +49,14 @@ func commentFolds(file *source.File) []Fold {
 		}
 	}
 	return folds
+}
+
+// closingOf returns the index of the brace that closes the block that unit i
+// opens, or −1 where it opens none or the brace is missing.
+func closingOf(tree *syntax.Tree, i int) int {
+	switch tree.Units[i].Statement.Kind {
+	case syntax.CaseKind, syntax.PartKind:
+		return tree.Closing(i)
+	}
+	return -1
 }

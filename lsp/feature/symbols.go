@@ -37,7 +37,7 @@ func Symbols(s *workspace.Snapshot, path string) []Symbol {
 	}
 	o := outline{tree: v.Resolved.Trees[i], definitions: map[int]*resolve.Definition{}}
 	for _, d := range v.Resolved.Definitions() {
-		if d.File == path {
+		if d.File == path && d.Kind != resolve.ParameterName {
 			o.definitions[d.Statement.Start] = d
 		}
 	}
@@ -73,7 +73,7 @@ func (o *outline) gather(from, to int) (gathered []Symbol, whole source.Span) {
 		u := &o.tree.Units[i]
 		d := o.definitions[u.Start]
 		end := i
-		if closing := o.tree.Closing(i); closing > i && closing < to {
+		if closing := closingOf(o.tree, i); closing > i && closing < to {
 			end = closing
 		}
 		if d == nil {
