@@ -46,14 +46,20 @@ func (h *hover) limit() {
 }
 
 // limitAnswer finds the answer to a limit of the text among those of the solved
-// model: the one that reads the same.
+// model: the one that reads the same. What stands in a part has one for each
+// place; the worst counts.
 func (n *numbers) limitAnswer(l *model.Limit) (*analysis.Limit, bool) {
+	var worst *analysis.Limit
 	for i := range n.solution.Limits {
-		if n.model.Limits[n.solution.Limits[i].Index].Text == l.Text {
-			return &n.solution.Limits[i], true
+		a := &n.solution.Limits[i]
+		if n.model.Limits[a.Index].Text != l.Text {
+			continue
+		}
+		if worst == nil || a.Governs.Result < 0 || worst.Governs.Result >= 0 && a.Governs.Ratio > worst.Governs.Ratio {
+			worst = a
 		}
 	}
-	return nil, false
+	return worst, worst != nil
 }
 
 // margin says how far a value is from its bound.

@@ -141,6 +141,15 @@ func (h *hover) governing(envelopes []*analysis.Envelope, member int) (rows [][]
 	return rows, governs
 }
 
+// exceeds reports whether a governs more than b: by size, a stress by its share of
+// what the material takes. Of equals the first stays.
+func exceeds(a, b *analysis.Governing) bool {
+	if a.Share > 0 && b.Share > 0 {
+		return a.Share > (1+1e-9)*b.Share
+	}
+	return math.Abs(a.Value) > (1+1e-9)*math.Abs(b.Value)
+}
+
 // ownBending says how a bar bends under the loads on it, which carry to its ends
 // as on a simple beam and add nothing to what the structure does.
 func (h *hover) ownBending(e *analysis.Envelope, member int) string {
@@ -266,7 +275,7 @@ func (h *hover) worst(e *analysis.Envelope, members []int) {
 			continue
 		}
 		for _, g := range n.governing(e, member) {
-			if b, ok := best[g.Quantity]; !ok || math.Abs(g.Value) > (1+1e-9)*math.Abs(b.Value) { // of equals the first
+			if b, ok := best[g.Quantity]; !ok || exceeds(&g, &b.Governing) {
 				best[g.Quantity] = struct {
 					analysis.Governing
 					member int

@@ -5,7 +5,9 @@ import (
 	"fmt"
 	"path/filepath"
 	"strings"
+	"sync"
 	"testing"
+	"time"
 
 	"github.com/stretchr/testify/assert"
 	"github.com/stretchr/testify/require"
@@ -175,6 +177,70 @@ func TestLineOfAction(t *testing.T) {
 	assert.False(t, ok, "a wrench")
 	_, ok = lineOfAction([6]float64{0, 0, 0, 0, 30, 5})
 	assert.False(t, ok)
+}
+
+// Of a limit in a part the worst place is shown, of a group the member whose
+// stress takes most of its strength, of one bar no bending.
+func TestHoverShowsTheWorst(t *testing.T) {
+	d := open(t, "/masts.span", `model "Masts" plane
+material steel = S355
+material oak = { E 10 GPa, G 0.6 GPa, density 700 kg/m3, yield 10 MPa }
+section tube = pipe 100 x 5 mm of steel
+section pole = rect 100 x 100 mm of oak
+part mast(high) {
+    node foot = (0, 0) m
+    node top = (0 m, high)
+    beam stem = foot -> top of tube
+    support foot fixed
+    limit deflection of stem <= 100 mm under Q
+    limit ux at top <= 50 mm under Q
+}
+place low = mast(2 m) at (0, 0) m
+place tall = mast(4 m) at (5, 0) m
+node A = (0, 10) m
+node B = (3, 10) m
+bar post = A -> B of pole
+support A pinned
+support B holds uz
+group all_of_it = low.stem, post
+case Q imposed B {
+    low.top: 1 kN along x
+    tall.top: 1 kN along x
+    B: 20 kN along x
+}
+`)
+	require.True(t, d.settle().Resolved.Complete)
+	// u = F h³/3EI with I of the pipe 168.8 cm4: 64/3·1e3/(210e9·168.8e-8) = 60.2 mm.
+	assert.Contains(t, d.hover("|limit ux at top"), "**Broken**")
+	assert.Contains(t, d.hover("|limit ux at top"), "| ux at tall.top | 60.2 mm |")
+	assert.Contains(t, d.hover("part |mast"), "2 places: low, tall")
+	assert.Contains(t, d.hover("mast(|high)"), "parameter of part mast, 2 m in low")
+	// The steel has 59.2 MPa of 355, the oak 20 kN/100 cm2 = 2 MPa of 10.
+	assert.Contains(t, d.hover("group |all_of_it"), "| stress | 2 MPa | post, at A | `Q` | 20 % of yield |")
+	assert.NotContains(t, d.hover("bar |post"), "My |")
+	assert.Contains(t, d.hover("bar |post"), "| N | 20 kN |")
+}
+
+// Hovers and hints may be asked for at the same time, while models are solved.
+func TestTogether(t *testing.T) {
+	d := openFile(t, "../../testdata/models/slipway.span")
+	var all sync.WaitGroup
+	for k := range 4 {
+		all.Go(func() {
+			for n := range 15 {
+				s := d.snapshot()
+				tree, err := s.Tree(d.path)
+				if assert.NoError(t, err) {
+					everything(s, d.path, (k*997+n*313)%len(tree.File.Text))
+				}
+			}
+		})
+	}
+	for n := range 10 {
+		d.edit([]string{"let clear   = 6 m", "let clear   = 7 m"}[n%2], []string{"let clear   = 6 m", "let clear   = 7 m"}[1-n%2])
+		time.Sleep(5 * time.Millisecond)
+	}
+	all.Wait()
 }
 
 // BenchmarkHover measures hovers in settled models. Aim: below 10 ms for 10,000
