@@ -46,7 +46,7 @@ func (h *hover) sums(e *analysis.Envelope) []string {
 			}
 		}
 	}
-	size := math.Max(largest(least[:]), largest(most[:]))
+	size := math.Max(math.Max(largest(least[:]), largest(most[:])), n.display.Force.Factor)
 	var parts []string
 	for f := range 3 {
 		if math.Max(math.Abs(least[f]), math.Abs(most[f])) <= 1e-9*size {
@@ -81,7 +81,8 @@ func (h *hover) largestMovement(e *analysis.Envelope) {
 			}
 		}
 	}
-	if node < 0 {
+	if node < 0 || nothing(size, n.display.Movement) {
+		h.page.add("No node moves.")
 		return
 	}
 	text := fmt.Sprintf("Largest movement of a node %s at %s", quantity.Write(size, n.display.Movement, 3), n.model.Nodes[node].Name)

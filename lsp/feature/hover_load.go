@@ -2,6 +2,7 @@ package feature
 
 import (
 	"math"
+	"slices"
 	"strings"
 
 	"spanwright/analysis"
@@ -21,7 +22,11 @@ func (h *hover) load() {
 	}
 	m := h.model
 	total := resultant(m, loads)
-	h.page.add("Load in case **" + m.Cases[loadCase].Name + "**: " + h.resultantWords(total))
+	text := h.resultantWords(total)
+	if !slices.ContainsFunc(loads, func(l model.Load) bool { return l.Kind != model.NodeMove && l.Kind != model.NodeTurn }) {
+		text = "it moves the support, and is no force itself"
+	}
+	h.page.add("Load in case **" + m.Cases[loadCase].Name + "**: " + text)
 	if where := h.actionWords(total); where != "" {
 		h.page.add(where)
 	}

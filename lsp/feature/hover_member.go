@@ -45,13 +45,19 @@ func (h *hover) member(d *resolve.Definition) {
 		return
 	}
 	rows, governs := h.governing(envelopes, member)
-	h.page.add(table([]string{envelopes[0].Name() + " governs", "value>", "where", "in", ""}, rows))
-	switch {
+	heading := envelopes[0].Name() + " governs"
+	if strings.Contains(envelopes[0].Name(), " ") {
+		heading = "governs in " + envelopes[0].Name()
+	}
+	h.page.add(table([]string{heading, "value>", "where", "in", ""}, rows))
+	switch kind := n.model.Members[member].Kind; {
+	case kind == model.Link:
+		h.page.add("A rigid link: statics alone does not tell what passes through it.")
 	case len(rows) == 0:
 		h.page.add("No force in " + envelopes[0].Name() + ".")
-	case n.model.Members[member].Kind == model.Bar:
+	case kind == model.Bar:
 		h.page.add(h.ownBending(envelopes[0], member))
-	default:
+	case kind == model.Beam:
 		h.diagrams(member, governs)
 	}
 	h.ownStiffness(member)
@@ -191,6 +197,7 @@ func (h *hover) diagrams(member, result int) {
 	if len(courses) == 0 {
 		return
 	}
+	h.page.add("In " + code(r.Name()) + ":")
 	if h.options.Pictures {
 		if svg, err := diagram.Picture(courses...); err == nil && len(svg) <= mostPicture {
 			h.page.add(fmt.Sprintf("![%s along %s in %s](data:image/svg+xml;base64,%s)", courses[0].Label, n.model.Members[member].Name, r.Name(), base64.StdEncoding.EncodeToString(svg)))
@@ -206,7 +213,7 @@ func (h *hover) diagrams(member, result int) {
 		c.Label += strings.Repeat(" ", width-utf8.RuneCountInString(c.Label))
 		lines = append(lines, diagram.Text(c, diagramWidth))
 	}
-	h.page.add("In "+code(r.Name())+":", block(strings.Join(lines, "\n")))
+	h.page.add(block(strings.Join(lines, "\n")))
 }
 
 // ownStiffness writes the member's own terms with their closed forms.

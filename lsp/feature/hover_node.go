@@ -28,7 +28,7 @@ func (h *hover) node(d *resolve.Definition) {
 		h.page.add("**" + d.Name + "** · node")
 		return
 	}
-	h.page.add("**" + m.Nodes[i].Name + "** · " + h.supportWords(i) + " at " + position(m, m.Nodes[i].Position))
+	h.page.add("**" + m.Nodes[i].Name + "** · " + h.supportWords(i) + " at " + position(m, m.Nodes[i].Position) + h.massWords(i))
 	if !h.solved {
 		return
 	}
@@ -43,6 +43,20 @@ func (h *hover) node(d *resolve.Definition) {
 
 // solvedNode is the node's index in the solved model, which may be older.
 func (h *hover) solvedNode(name string) int { return h.numbers.solution.Node(name) }
+
+// massWords says which mass is put at a node.
+func (h *hover) massWords(node int) string {
+	mass := 0.0
+	for i := range h.model.Masses {
+		if h.model.Masses[i].Node == node {
+			mass += h.model.Masses[i].Mass
+		}
+	}
+	if mass == 0 {
+		return ""
+	}
+	return ", mass " + quantity.Write(mass, h.model.Display.Mass, 4)
+}
 
 // supportWords says how a node is held.
 func (h *hover) supportWords(node int) string {
@@ -141,6 +155,8 @@ func (h *hover) components(title string, names [6]string, unit func(int) quantit
 	for i := range rows {
 		size[0], size[1] = math.Max(size[0], largest(rows[i].values[:3])), math.Max(size[1], largest(rows[i].values[3:]))
 	}
+	size[0] = math.Max(size[0], unit(0).Factor)
+	size[1] = math.Max(size[1], unit(3).Factor)
 	// A moment is rounding too where the forces make it at an arm of nothing.
 	size[1] = math.Max(size[1], 1e-3*size[0])
 	headings := []string{title}

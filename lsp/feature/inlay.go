@@ -194,7 +194,7 @@ func (h *hinter) reaction(e *analysis.Envelope, node int) (label, tooltip string
 		var texts []string
 		for _, g := range sides {
 			value := cleaned(g.Value, size[f/3])
-			if n.component(value, f, n.forceUnit(f), false) == "0" {
+			if nothing(value, n.forceUnit(f)) {
 				continue
 			}
 			texts = append(texts, n.directed(value, f))

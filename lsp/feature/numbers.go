@@ -114,11 +114,16 @@ func (n *numbers) component(value float64, freedom int, u quantity.Unit, unit bo
 		}
 		return quantity.Number(v/u.Factor, 3)
 	}
-	if quantity.Number(value/u.Factor, 3) == "0" {
+	if nothing(value, u) {
 		return write(0)
 	}
 	return write(value) + n.arrow(value, freedom)
 }
+
+// nothing says that a value is zero to any engineer: less than a thousand
+// millionth of the unit that it is shown in, 1 µN or 1 picometre. Rounding leaves
+// such values where loads are in balance by themselves.
+func nothing(value float64, u quantity.Unit) bool { return math.Abs(value) < 1e-9*u.Factor }
 
 func (n *numbers) arrow(value float64, freedom int) string {
 	arrows := map[int][2]string{0: {" →", " ←"}, 2: {" ↑", " ↓"}}
@@ -172,7 +177,7 @@ func spanRatio(length, deflection float64) string {
 // its stress: how the bar bends between its ends under loads of its own is no
 // matter of the structure.
 func (n *numbers) governing(e *analysis.Envelope, member int) []analysis.Governing {
-	list := e.Governing(member)
+	list := slices.DeleteFunc(e.Governing(member), func(g analysis.Governing) bool { return nothing(g.Value, n.unitOf(g.Quantity)) })
 	b := &n.model.Members[member]
 	if b.Kind != model.Bar || b.Section < 0 {
 		return list
