@@ -15,6 +15,7 @@ type commands struct {
 	Check      checkCommand              `cmd:"" help:"Report mistakes and broken limits."`
 	Format     formatCommand             `cmd:"" help:"Write models in normal form."`
 	Solve      solveCommand              `cmd:"" help:"Print reactions, movements, member forces and limits."`
+	Compare    compareCommand            `cmd:"" help:"Say what changed between two models, and what that did."`
 	Stiffness  stiffnessCommand          `cmd:"" help:"Print the stiffness of the structure at a node, or of a member."`
 	Explain    explainCommand            `cmd:"" help:"Say what a diagnostic means and how to mend it."`
 	Serve      serveCommand              `cmd:"" help:"Run the language server on standard input and output."`
