@@ -129,6 +129,45 @@ func (s *Structure) balance(st *State, largest float64) {
 		}
 		st.residual = max(st.residual, math.Abs(st.loading.applied[k]+st.reacted[k])/size)
 	}
+	if st.residual > balanced {
+		if play := st.inPlay(extent); play > largest {
+			st.residual *= largest / play
+		}
+	}
+}
+
+// inPlay returns the largest of the forces that cancel each other where the
+// structure gives way freely: warming, lack of fit or a settlement of a statically
+// determinate structure leaves nothing but the rounding of such forces, which must
+// not be measured against itself.
+func (st *State) inPlay(extent float64) (largest float64) {
+	s := st.structure
+	take := func(force element.Vector) {
+		for k, f := range force {
+			if k%6 >= 3 {
+				f /= extent
+			}
+			largest = max(largest, math.Abs(f))
+		}
+	}
+	for i := range s.segments {
+		e := s.segments[i].element
+		if spans := s.spansOn(i, &st.loading); len(spans) > 0 {
+			take(e.FixedEnd(spans))
+		}
+		if st.loading.amounts == nil {
+			continue
+		}
+		var force element.Vector
+		moved, stiffness := st.movedEnds(i), e.Stiffness()
+		for row := range force {
+			for column, d := range moved {
+				force[row] += math.Abs(stiffness[len(moved)*row+column] * d)
+			}
+		}
+		take(force)
+	}
+	return largest
 }
 
 // endForces returns what the bodies do to a segment's ends, in member axes.
