@@ -15,8 +15,8 @@ import (
 type Symbol struct {
 	Name   string
 	Detail string
-	// Kind is what the name stands for. A heading that only gathers others has
-	// [resolve.NoKind].
+	// Kind is what the name stands for. Headings, supports and limits, which
+	// declare nothing, have [resolve.NoKind].
 	Kind resolve.Kind
 	// Whole is the place of the statement or block, Name of the name in it.
 	Whole, NameSpan source.Span
@@ -41,8 +41,7 @@ func Symbols(s *workspace.Snapshot, path string) []Symbol {
 			o.definitions[d.Statement.Start] = d
 		}
 	}
-	symbols, _ := o.gather(0, len(o.tree.Units))
-	return symbols
+	return o.gather(0, len(o.tree.Units))
 }
 
 type outline struct {
@@ -66,9 +65,10 @@ var headings = []struct {
 	{"Combinations", []resolve.Kind{resolve.FamilyName, resolve.CombinationName}},
 }
 
-// gather returns the outline of units from … to−1, and their whole span.
-func (o *outline) gather(from, to int) (gathered []Symbol, whole source.Span) {
+// gather returns the outline of units from … to−1.
+func (o *outline) gather(from, to int) (gathered []Symbol) {
 	var all []Symbol
+	var supports, limits []Symbol
 	for i := from; i < to; i++ {
 		u := &o.tree.Units[i]
 		d := o.definitions[u.Start]
@@ -77,44 +77,55 @@ func (o *outline) gather(from, to int) (gathered []Symbol, whole source.Span) {
 			end = closing
 		}
 		if d == nil {
+			switch tree := u.Statement.Tree.(type) {
+			case *syntax.SupportStatement:
+				if tree.Node != nil {
+					name := tree.Node.Span()
+					supports = append(supports, Symbol{Name: tree.Node.Text, Detail: detail(u.Statement.Text[name.End:]), Whole: u.Span(), NameSpan: name.Shift(u.Start)})
+				}
+			case *syntax.LimitStatement:
+				if text := detail(u.Statement.Text[len("limit"):]); text != "" {
+					limits = append(limits, Symbol{Name: text, Whole: u.Span(), NameSpan: u.Span()})
+				}
+			}
 			continue
 		}
-		symbol := Symbol{Name: d.Name, Detail: detail(u.Statement.Text, d.Name), Kind: d.Kind,
+		symbol := Symbol{Name: d.Name, Detail: detail(u.Statement.Text[d.Span.End-u.Start:]), Kind: d.Kind,
 			Whole: source.Span{Start: u.Start, End: o.tree.Units[end].End}, NameSpan: d.Span}
 		if d.Kind == resolve.PartName && end > i {
-			symbol.Children, _ = o.gather(i+1, end)
+			symbol.Children = o.gather(i+1, end)
 		}
 		all = append(all, symbol)
 		i = end
 	}
-	for _, h := range headings {
-		group := Symbol{Name: h.title}
-		for _, symbol := range all {
-			if slices.Contains(h.kinds, symbol.Kind) {
-				group.Children = append(group.Children, symbol)
-			}
+	add := func(title string, children []Symbol) {
+		if len(children) == 0 {
+			return
 		}
-		if len(group.Children) == 0 {
-			continue
-		}
-		group.NameSpan = group.Children[0].NameSpan
-		group.Whole = group.Children[0].Whole
-		for _, c := range group.Children {
+		group := Symbol{Name: title, Whole: children[0].Whole, NameSpan: children[0].NameSpan, Children: children}
+		for _, c := range children {
 			group.Whole = group.Whole.Join(c.Whole)
 		}
 		gathered = append(gathered, group)
 	}
+	for _, h := range headings {
+		var children []Symbol
+		for _, symbol := range all {
+			if slices.Contains(h.kinds, symbol.Kind) {
+				children = append(children, symbol)
+			}
+		}
+		add(h.title, children)
+	}
+	add("Supports", supports)
+	add("Limits", limits)
 	slices.SortStableFunc(gathered, func(a, b Symbol) int { return cmp.Compare(a.Whole.Start, b.Whole.Start) })
-	return gathered, whole
+	return gathered
 }
 
-// detail is what a statement says behind the name, on one line.
-func detail(text, name string) string {
-	at := strings.Index(text, name)
-	if at < 0 {
-		return ""
-	}
-	rest := strings.Join(strings.Fields(text[at+len(name):]), " ")
+// detail is what a statement says behind its name, on one line.
+func detail(rest string) string {
+	rest = strings.Join(strings.Fields(rest), " ")
 	rest = strings.TrimSpace(strings.TrimSuffix(strings.TrimPrefix(rest, "="), "{"))
 	if runes := []rune(rest); len(runes) > 60 {
 		rest = string(runes[:59]) + "…"
