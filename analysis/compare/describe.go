@@ -286,7 +286,7 @@ func (d *describer) loads() []thing {
 func (d *describer) load(l *model.Load) []attribute {
 	m := d.m
 	axes := ""
-	if l.Axes == model.Local {
+	if l.Axes == model.Local && l.Kind != model.Warming && l.Kind != model.Gradient && l.Kind != model.LackOfFit && l.Kind != model.Pretension {
 		axes = " in member axes"
 	}
 	var target attribute

@@ -4,6 +4,7 @@ import (
 	"fmt"
 	"strings"
 
+	"github.com/agnivade/levenshtein"
 	"github.com/jedib0t/go-pretty/v6/table"
 
 	"spanwright/lang/diagnostic"
@@ -34,6 +35,9 @@ func (c *explainCommand) Run(t *terminal) error {
 	}
 	e, ok := diagnostic.Explain(diagnostic.Name(strings.Trim(c.Name, "[]")))
 	if !ok {
+		if near := nearestName(c.Name); near != "" {
+			return fmt.Errorf("no diagnostic is called %q. Did you mean %s?", c.Name, near)
+		}
 		return fmt.Errorf("no diagnostic is called %q; spanwright explain lists them", c.Name)
 	}
 	fmt.Fprintf(t.out, "%s (%s)\n%s\n\n%s\n", e.Name, e.Severity, e.Title, e.Explanation)
@@ -44,6 +48,17 @@ func (c *explainCommand) Run(t *terminal) error {
 		fmt.Fprintf(t.out, "\nMended\n%s\n", indented(e.Mend))
 	}
 	return nil
+}
+
+// nearestName returns the name of a diagnostic that is nearly written so, or "".
+func nearestName(name string) string {
+	best, distance := "", 4
+	for _, e := range diagnostic.Entries() {
+		if d := levenshtein.ComputeDistance(strings.ToLower(name), string(e.Name)); d < distance {
+			best, distance = string(e.Name), d
+		}
+	}
+	return best
 }
 
 // indented moves each line of a text in by four blanks.

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"os"
+	"strings"
 
 	"github.com/alecthomas/kong"
 	kongcompletion "github.com/jotaen/kong-completion"
@@ -16,6 +17,7 @@ type commands struct {
 	Format     formatCommand             `cmd:"" help:"Write models in normal form."`
 	Solve      solveCommand              `cmd:"" help:"Print reactions, movements, member forces and limits."`
 	Compare    compareCommand            `cmd:"" help:"Say what changed between two models, and what that did."`
+	External   externalDiffCommand       `cmd:"" name:"external-diff" help:"Compare as git's external diff."`
 	Stiffness  stiffnessCommand          `cmd:"" help:"Print the stiffness of the structure at a node, or of a member."`
 	Explain    explainCommand            `cmd:"" help:"Say what a diagnostic means and how to mend it."`
 	Serve      serveCommand              `cmd:"" help:"Run the language server on standard input and output."`
@@ -56,7 +58,7 @@ func run(arguments []string, t *terminal) int {
 		return status
 	}
 	if err != nil {
-		fmt.Fprintf(t.err, "spanwright: %v. Try spanwright --help.\n", err)
+		fmt.Fprintf(t.err, "spanwright: %s. Try spanwright --help.\n", strings.TrimSuffix(err.Error(), "?"))
 		return statusMisuse
 	}
 	err = context.Run()

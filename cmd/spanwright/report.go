@@ -3,6 +3,7 @@ package main
 import (
 	"fmt"
 	"io"
+	"strings"
 
 	"github.com/jedib0t/go-pretty/v6/table"
 	"github.com/jedib0t/go-pretty/v6/text"
@@ -48,7 +49,9 @@ func (s *sheet) write(w io.Writer, as style) {
 	for _, r := range s.rows {
 		row := make(table.Row, len(r))
 		for i, cell := range r {
-			row[i] = cell
+			if row[i] = cell; as == asCSV {
+				row[i] = strings.ReplaceAll(cell, "−", "-") // spreadsheets know no other minus
+			}
 		}
 		t.AppendRow(row)
 	}

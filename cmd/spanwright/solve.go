@@ -81,15 +81,15 @@ func (c *solveCommand) write(ctx context.Context, t *terminal, results *analysis
 		return results.WriteJSON(ctx, t.out, analysis.DocumentOptions{Stations: c.Stations})
 	}
 	form := asText
-	switch {
-	case c.Markdown:
+	if c.Markdown {
 		form = asMarkdown
-	case c.CSV:
-		form = asCSV
 	}
 	r := report{results: results, model: results.Model(), only: c.Only}
 	if unknown := r.unknown(); unknown != "" {
 		return fmt.Errorf("%s has no node, member, case, combination or family called %s", c.File, unknown)
+	}
+	if c.CSV {
+		return r.writeCSV(t.out)
 	}
 	return r.write(t.out, form)
 }
@@ -141,9 +141,7 @@ func (r *report) wantedResult(name string) bool {
 
 // write writes the whole report.
 func (r *report) write(w io.Writer, form style) error {
-	if form != asCSV {
-		fmt.Fprintf(w, "%s\n\n", r.heading())
-	}
+	fmt.Fprintf(w, "%s\n\n", r.heading())
 	r.caseReactions().write(w, form)
 	for _, e := range r.envelopes() {
 		r.reactions(e).write(w, form)
@@ -158,9 +156,7 @@ func (r *report) write(w io.Writer, form style) error {
 		return err
 	}
 	limits.write(w, form)
-	if form != asCSV {
-		fmt.Fprintln(w, caution)
-	}
+	fmt.Fprintln(w, caution)
 	return nil
 }
 
@@ -383,9 +379,12 @@ func unitOf(d quantity.Display, q analysis.Quantity) quantity.Unit {
 
 func percent(share float64) string { return fmt.Sprintf("%.0f %%", 100*share) }
 
+// answers are those to the limits.
+func (r *report) answers() ([]analysis.Limit, error) { return r.results.Limits(context.Background()) }
+
 // limits lists the answers to the limits.
 func (r *report) limits() (*sheet, error) {
-	answers, err := r.results.Limits(context.Background())
+	answers, err := r.answers()
 	if err != nil {
 		return nil, err
 	}
