@@ -35,7 +35,7 @@ func main() {
 
 // run carries out one command line and returns the exit status.
 func run(arguments []string, t *terminal) int {
-	if len(arguments) == 0 {
+	if len(arguments) == 0 && os.Getenv("COMP_LINE") == "" {
 		fmt.Fprint(t.out, firstSteps)
 		return statusWell
 	}
