@@ -20,6 +20,10 @@ import (
 func sameAsIndex(t require.TestingT, r *Result) {
 	for _, tree := range r.Trees {
 		path, text := tree.File.Path, tree.File.Text
+		times := map[source.Span]int{} // in a broken text a word may have been looked up as two things
+		for _, ref := range r.References(path) {
+			times[ref.Span]++
+		}
 		for offset := 0; offset <= len(text); offset++ {
 			want, found := r.ReferenceAt(path, offset)
 			got, ok := r.NameAt(path, offset)
@@ -28,6 +32,9 @@ func sameAsIndex(t require.TestingT, r *Result) {
 				continue
 			}
 			require.Equal(t, want.Span, got.Span, "at %d of\n%s", offset, text)
+			if times[want.Span] > 1 {
+				continue
+			}
 			require.Equal(t, want.Declaration, got.Declaration, "at %d of\n%s", offset, text)
 			definition, made := *want.Definition, *got.Definition
 			definition.Uses, made.Uses = 0, 0
@@ -38,6 +45,9 @@ func sameAsIndex(t require.TestingT, r *Result) {
 			named[n.Span] = n
 		}
 		for _, ref := range r.References(path) {
+			if times[ref.Span] > 1 {
+				continue
+			}
 			require.Equal(t, Named{ref.Span, ref.Definition.Kind, ref.Declaration}, named[ref.Span], "%s", text)
 		}
 	}
