@@ -12,11 +12,15 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 	c := protocol.ServerCapabilities{
 		PositionEncoding:  encoding,
 		InlayHintProvider: &protocol.InlayHintOptions{},
+		CompletionProvider: &protocol.CompletionOptions{CompletionOptions: lsp.CompletionOptions{
+			ResolveProvider: &yes, TriggerCharacters: []string{" ", ".", ">"},
+		}},
 		ServerCapabilities: lsp.ServerCapabilities{
 			TextDocumentSync: lsp.TextDocumentSyncOptions{
 				OpenClose: &yes,
 				Change:    pointer(lsp.TextDocumentSyncKindIncremental),
 			},
+			HoverProvider:                   true,
 			DefinitionProvider:              true,
 			DocumentSymbolProvider:          true,
 			WorkspaceSymbolProvider:         true,

@@ -14,6 +14,8 @@ func (s *server) methods() map[string]rpc.Method {
 		string(lsp.MethodTextDocumentDidChange):     s.didChange,
 		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
 		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
+		string(lsp.MethodTextDocumentCompletion):    rpc.Typed(s.completion),
+		string(lsp.MethodCompletionItemResolve):     rpc.Typed(s.resolveCompletion),
 		protocol.MethodTextDocumentInlayHint:        rpc.Typed(s.inlayHints),
 		string(lsp.MethodWorkspaceExecuteCommand):   rpc.Typed(s.executeCommand),
 		string(lsp.MethodTextDocumentRename):        rpc.Typed(s.rename),
@@ -33,6 +35,7 @@ func (s *server) handler() *lsp.Handler {
 		TextDocumentDidOpen:  s.didOpen,
 		TextDocumentDidClose: s.didClose,
 
+		TextDocumentHover:             s.hover,
 		TextDocumentDefinition:        s.definition,
 		TextDocumentDocumentSymbol:    s.symbols,
 		WorkspaceSymbol:               s.workspaceSymbols,

@@ -71,7 +71,9 @@ func ExpectedAt(tree *syntax.Tree, offset int) Expected {
 	return x
 }
 
-func opens(s *syntax.Statement) bool { return s.Kind == syntax.CaseKind || s.Kind == syntax.PartKind }
+func opens(s *syntax.Statement) bool {
+	return (s.Kind == syntax.CaseKind || s.Kind == syntax.PartKind) && strings.HasSuffix(s.Text, "{")
+}
 
 func inside(u *syntax.Unit) syntax.Block {
 	switch {
