@@ -30,6 +30,7 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 			DocumentLinkProvider:            &lsp.DocumentLinkOptions{},
 			FoldingRangeProvider:            true,
 			SelectionRangeProvider:          true,
+			CodeActionProvider:              s.actionOptions(),
 			RenameProvider:                  s.renameOptions(),
 			SemanticTokensProvider:          tokenOptions(),
 			ExecuteCommandProvider:          &lsp.ExecuteCommandOptions{Commands: s.commandNames()},
@@ -50,6 +51,12 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 		c.DiagnosticProvider = &protocol.DiagnosticOptions{Identifier: section, InterFileDependencies: true}
 	}
 	return c
+}
+
+// actionOptions is the offer of code actions, with edits that can wait until an
+// action is chosen.
+func (s *server) actionOptions() any {
+	return lsp.CodeActionOptions{CodeActionKinds: []lsp.CodeActionKind{lsp.CodeActionKindQuickFix, lsp.CodeActionKindRefactorRewrite}, ResolveProvider: pointer(true)}
 }
 
 // renameOptions is the offer of rename; only a client that knows how may ask

@@ -14,6 +14,8 @@ func (s *server) methods() map[string]rpc.Method {
 		string(lsp.MethodTextDocumentDidChange):     s.didChange,
 		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
 		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
+		string(lsp.MethodTextDocumentCodeAction):    rpc.Typed(s.codeActions),
+		string(lsp.MethodCodeActionResolve):         rpc.Typed(s.resolveAction),
 		string(lsp.MethodTextDocumentCompletion):    rpc.Typed(s.completion),
 		string(lsp.MethodCompletionItemResolve):     rpc.Typed(s.resolveCompletion),
 		protocol.MethodTextDocumentInlayHint:        rpc.Typed(s.inlayHints),

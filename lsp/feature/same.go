@@ -9,7 +9,7 @@ import (
 
 // unseen are the fields of a model that an analysis does not see, or that hold
 // names.
-var unseen = map[string]bool{"Name": true, "Origin": true, "Heading": true, "Files": true, "Text": true, "Title": true, "Generated": true}
+var unseen = map[string]bool{"Name": true, "Origin": true, "Heading": true, "Files": true, "Text": true, "Title": true, "Generated": true, "Display": true}
 
 // sameStructure reports whether two models are the same to an analysis, names
 // aside; if not, it says which part of the model differs.
@@ -46,7 +46,9 @@ func sameValue(a, b reflect.Value) bool {
 		}
 		return true
 	case reflect.Float64:
-		return a.Float() == b.Float() || math.IsNaN(a.Float()) && math.IsNaN(b.Float())
+		// The same number written in another unit may differ in its last digit.
+		x, y := a.Float(), b.Float()
+		return math.Abs(x-y) <= 4e-16*math.Max(math.Abs(x), math.Abs(y)) || x == y || math.IsNaN(x) && math.IsNaN(y)
 	default:
 		return a.Equal(b)
 	}
