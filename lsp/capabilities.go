@@ -30,6 +30,7 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 			DocumentLinkProvider:            &lsp.DocumentLinkOptions{},
 			FoldingRangeProvider:            true,
 			SelectionRangeProvider:          true,
+			SignatureHelpProvider:           &lsp.SignatureHelpOptions{TriggerCharacters: []string{"(", ",", ":", "="}},
 			CodeActionProvider:              s.actionOptions(),
 			RenameProvider:                  s.renameOptions(),
 			SemanticTokensProvider:          tokenOptions(),

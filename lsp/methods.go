@@ -38,6 +38,7 @@ func (s *server) handler() *lsp.Handler {
 		TextDocumentDidClose: s.didClose,
 
 		TextDocumentHover:             s.hover,
+		TextDocumentSignatureHelp:     s.signatureHelp,
 		TextDocumentDefinition:        s.definition,
 		TextDocumentDocumentSymbol:    s.symbols,
 		WorkspaceSymbol:               s.workspaceSymbols,
