@@ -8,7 +8,7 @@ func Definition(s *workspace.Snapshot, path string, offset int) (Location, bool)
 	if !ok {
 		return Location{}, false
 	}
-	if r, ok := v.Resolved.ReferenceAt(path, offset); ok && r.Definition != nil {
+	if r, ok := v.Resolved.NameAt(path, offset); ok {
 		return Location{r.Definition.File, r.Definition.Span}, true
 	}
 	if i := v.Resolved.FileIndex(path); i >= 0 {

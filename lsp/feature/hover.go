@@ -68,7 +68,7 @@ type hover struct {
 
 // write finds what the place is about.
 func (h *hover) write() {
-	if r, ok := h.view.Resolved.ReferenceAt(h.path, h.offset); ok && r.Definition != nil {
+	if r, ok := h.view.Resolved.NameAt(h.path, h.offset); ok {
 		h.span = r.Span
 		h.name(r.Definition)
 		return
@@ -129,14 +129,17 @@ func (h *hover) described(token syntax.Token) bool {
 	if !span.Contains(int(token.Start)) || !span.Contains(int(token.End)) {
 		return false
 	}
-	for _, d := range h.view.Resolved.Definitions() {
-		if d.File == h.path && d.Statement.Start == h.unit.Start {
-			h.span = span.Shift(h.unit.Start)
-			write(d)
-			return true
-		}
+	name := h.unit.Statement.Declares()
+	if name == nil {
+		return false
 	}
-	return false
+	r, ok := h.view.Resolved.NameAt(h.path, h.unit.Start+name.Span().Start)
+	if !ok {
+		return false
+	}
+	h.span = span.Shift(h.unit.Start)
+	write(r.Definition)
+	return true
 }
 
 // token returns the token at the place. The blank behind a word is no word; the

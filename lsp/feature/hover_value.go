@@ -18,14 +18,14 @@ func (h *hover) value() bool {
 	if amount == nil {
 		return false
 	}
-	v := h.view.Resolved.Value(h.path, h.offset, &syntax.Expression{Root: amount, Span: amount.Place()})
-	if len(v.Parts) != 1 || v.Parts[0].Dimension == quantity.None && !v.Parts[0].Angle {
+	q, ok := measured(amount)
+	if !ok || q.Dimension == quantity.None && !q.Angle {
 		return false
 	}
 	h.span = span.Shift(h.unit.Start)
 	written := strings.Join(strings.Fields(h.tree.File.Slice(h.span)), " ")
-	h.page.add("**" + written + "** · " + v.Parts[0].Words())
-	if others := inUnits(v.Parts[0], written); len(others) > 0 {
+	h.page.add("**" + written + "** · " + q.Words())
+	if others := inUnits(q, written); len(others) > 0 {
 		h.page.add("= " + strings.Join(others, " = "))
 	}
 	return true
@@ -138,6 +138,48 @@ func withUnit(n *syntax.NumberNode, around []syntax.Node) (amount syntax.Node, s
 		}
 	}
 	return amount, span
+}
+
+// measured returns what a number with units comes to. Whoever points at a number
+// does not wait for the values of the whole model to be worked out.
+func measured(n syntax.Node) (quantity.Quantity, bool) {
+	switch n := n.(type) {
+	case *syntax.NumberNode:
+		return quantity.Plain(n.Value), !math.IsInf(n.Value, 0)
+	case *syntax.NameNode:
+		u, ok := quantity.Lookup(syntax.NormalUnit(n.Text))
+		return quantity.Quantity{Value: u.Factor, Dimension: u.Dimension, Angle: u.Angle}, ok
+	case *syntax.GroupNode:
+		return measured(n.X)
+	case *syntax.BinaryNode:
+		x, ok := measured(n.X)
+		if !ok {
+			return x, false
+		}
+		if n.Op == syntax.Power {
+			return raised(x, n.Y)
+		}
+		y, ok := measured(n.Y)
+		switch {
+		case !ok:
+			return x, false
+		case n.Op == syntax.Divide:
+			return x.Over(y), y.Value != 0
+		case n.Op == syntax.Multiply || n.Op == syntax.Joined:
+			return x.Times(y), true
+		}
+	}
+	return quantity.Quantity{}, false
+}
+
+// raised returns a unit to a whole power: m^2.
+func raised(x quantity.Quantity, exponent syntax.Node) (quantity.Quantity, bool) {
+	n, ok := exponent.(*syntax.NumberNode)
+	if !ok || n.Value != math.Trunc(n.Value) || math.Abs(n.Value) > 12 {
+		return x, false
+	}
+	dimension, ok := x.Dimension.Power(int(n.Value))
+	return quantity.Quantity{Value: math.Pow(x.Value, n.Value), Dimension: dimension}, ok
 }
 
 // compounds are usual units that have no symbol of their own.

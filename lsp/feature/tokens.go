@@ -64,15 +64,34 @@ func Tokens(s *workspace.Snapshot, path string, part source.Span) []Token {
 	if i < 0 {
 		return nil
 	}
-	p := painter{tree: v.Resolved.Trees[i], references: v.Resolved.References(path), part: part}
+	p := painter{tree: v.Resolved.Trees[i], names: namesIn(v.Resolved, path, part), part: part}
 	return p.paint()
 }
 
+// screenful is about as much text as an editor asks for at a time.
+const screenful = 20_000 // bytes
+
+// namesIn returns the names in a part of a file: of much of it from the index of
+// all names, which is made once for a version.
+func namesIn(r *resolve.Result, path string, part source.Span) []resolve.Named {
+	if part.Len() <= screenful {
+		return r.NamesIn(path, part)
+	}
+	references := r.References(path)
+	list := make([]resolve.Named, 0, len(references))
+	for _, ref := range references {
+		if ref.Span.Overlaps(part) {
+			list = append(list, resolve.Named{Span: ref.Span, Kind: ref.Definition.Kind, Declaration: ref.Declaration})
+		}
+	}
+	return list
+}
+
 type painter struct {
-	tree       *syntax.Tree
-	references []resolve.Reference // in order; those before the place at hand are cut off
-	part       source.Span
-	tokens     []Token
+	tree   *syntax.Tree
+	names  []resolve.Named // in order; those before the place at hand are cut off
+	part   source.Span
+	tokens []Token
 }
 
 func (p *painter) paint() []Token {
@@ -81,8 +100,6 @@ func (p *painter) paint() []Token {
 	if first < len(p.tree.Units) && first > 0 {
 		at = p.tree.Units[first-1].End
 	}
-	skip, _ := slices.BinarySearchFunc(p.references, at, func(r resolve.Reference, at int) int { return r.Span.Start - at })
-	p.references = p.references[skip:]
 	for i := first; i < len(p.tree.Units) && p.tree.Units[i].Start <= p.part.End; i++ {
 		u := &p.tree.Units[i]
 		p.between(at, u.Start)
@@ -155,10 +172,10 @@ func opensBracket(rest []syntax.Token, text string) bool {
 }
 
 func (p *painter) word(u *syntax.Unit, span source.Span, word string, first, called bool) {
-	for len(p.references) > 0 && p.references[0].Span.End <= span.Start {
-		p.references = p.references[1:]
+	for len(p.names) > 0 && p.names[0].Span.End <= span.Start {
+		p.names = p.names[1:]
 	}
-	if len(p.references) > 0 && p.references[0].Span.Overlaps(span) && !p.references[0].Span.Empty() {
+	if len(p.names) > 0 && p.names[0].Span.Overlaps(span) && !p.names[0].Span.Empty() {
 		p.name(span)
 		return
 	}
@@ -178,7 +195,7 @@ func (p *painter) word(u *syntax.Unit, span source.Span, word string, first, cal
 // name paints a word that stands for something; of a qualified name each part
 // has its own reference.
 func (p *painter) name(span source.Span) {
-	for _, r := range p.references {
+	for _, r := range p.names {
 		if r.Span.Start >= span.End {
 			break
 		}
@@ -186,7 +203,7 @@ func (p *painter) name(span source.Span) {
 		if r.Declaration {
 			modifiers |= DeclarationBit
 		}
-		role := roleOf(r.Definition.Kind)
+		role := roleOf(r.Kind)
 		if role == ValueRole {
 			modifiers |= ReadonlyBit
 		}
