@@ -43,6 +43,9 @@ type Connection struct {
 
 	answering  tasks // requests
 	background tasks // what Go started
+
+	// said is closed when the client says exit; the state does not change then.
+	said chan struct{}
 }
 
 // Serve speaks with one client until it says exit or hangs up, and returns the
@@ -59,6 +62,7 @@ func Serve(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logger, open 
 		ctx:     ctx,
 		running: running{byID: map[ID]*Request{}},
 		turns:   make(chan struct{}, turns),
+		said:    make(chan struct{}),
 	}
 	c.stream.beforeEnd = c.drain
 	c.service = open(c)
@@ -75,18 +79,35 @@ func Serve(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logger, open 
 			log.Error("the server's work does not end")
 		}
 	}
-	// A terminal cannot be stopped from reading; do not wait for one.
+	// Neither a terminal nor a pipe on standard input can be stopped from reading;
+	// do not wait for one.
+	select {
+	case <-c.said:
+		return c.exit()
+	default:
+	}
 	select {
 	case <-c.stream.readEnded:
 		status = c.state.exitStatus()
 	case <-time.After(patience):
 		status = 1
 	}
+	c.written()
+	return status
+}
+
+// exit returns the status after the client has said exit.
+func (c *Connection) exit() int {
+	c.written()
+	return c.state.exitStatus()
+}
+
+// written waits until all messages are written, but not without end.
+func (c *Connection) written() {
 	select {
 	case <-c.stream.outbox.ended:
 	case <-time.After(patience):
 	}
-	return status
 }
 
 // drain lets the requests under way be answered and the answers be written.

@@ -54,6 +54,7 @@ func (l *readLoop) notified(r *Request) {
 	switch r.Method {
 	case lsp.MethodExit:
 		l.exited = true
+		close(l.said)
 		// Beside the read loop, which goes on reading: a client that writes
 		// something more before it reads the last answers must not be stuck.
 		go func() {

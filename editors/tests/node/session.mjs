@@ -2,7 +2,7 @@
 import { spawn } from "node:child_process";
 import { readFileSync } from "node:fs";
 import { fileURLToPath, pathToFileURL } from "node:url";
-import protocol from "vscode-languageserver-protocol/node.js";
+import protocol from "vscode-languageserver-protocol/node";
 
 const { createProtocolConnection, StreamMessageReader, StreamMessageWriter } = protocol;
 
