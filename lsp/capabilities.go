@@ -15,6 +15,7 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 		CompletionProvider: &protocol.CompletionOptions{CompletionOptions: lsp.CompletionOptions{
 			ResolveProvider: &yes, TriggerCharacters: []string{" ", ".", ">"},
 		}},
+		TypeHierarchyProvider: true,
 		ServerCapabilities: lsp.ServerCapabilities{
 			TextDocumentSync: lsp.TextDocumentSyncOptions{
 				OpenClose: &yes,
@@ -32,6 +33,7 @@ func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 			SelectionRangeProvider:          true,
 			SignatureHelpProvider:           &lsp.SignatureHelpOptions{TriggerCharacters: []string{"(", ",", ":", "="}},
 			CodeActionProvider:              s.actionOptions(),
+			CallHierarchyProvider:           true,
 			RenameProvider:                  s.renameOptions(),
 			SemanticTokensProvider:          tokenOptions(),
 			ExecuteCommandProvider:          &lsp.ExecuteCommandOptions{Commands: s.commandNames()},

@@ -56,6 +56,12 @@ func questions() []question {
 	}
 	options := map[string]any{"tabSize": 4, "insertSpaces": true}
 	return []question{
+		{"textDocument/hover", place()},
+		{"textDocument/completion", place()},
+		{"textDocument/signatureHelp", place()},
+		{"textDocument/codeAction", spanned("context", map[string]any{"diagnostics": []any{}})},
+		{"textDocument/prepareCallHierarchy", place()},
+		{"textDocument/prepareTypeHierarchy", place()},
 		{"textDocument/definition", place()},
 		{"textDocument/references", place("context", map[string]any{"includeDeclaration": true})},
 		{"textDocument/documentHighlight", place()},

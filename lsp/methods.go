@@ -11,16 +11,19 @@ import (
 // methods returns the methods that glsp does not know, or decodes with losses.
 func (s *server) methods() map[string]rpc.Method {
 	return map[string]rpc.Method{
-		string(lsp.MethodTextDocumentDidChange):     s.didChange,
-		protocol.MethodTextDocumentDiagnostic:       rpc.Typed(s.pullDiagnostics),
-		protocol.MethodTextDocumentRangesFormatting: rpc.Typed(s.rangesFormatting),
-		string(lsp.MethodTextDocumentCodeAction):    rpc.Typed(s.codeActions),
-		string(lsp.MethodCodeActionResolve):         rpc.Typed(s.resolveAction),
-		string(lsp.MethodTextDocumentCompletion):    rpc.Typed(s.completion),
-		string(lsp.MethodCompletionItemResolve):     rpc.Typed(s.resolveCompletion),
-		protocol.MethodTextDocumentInlayHint:        rpc.Typed(s.inlayHints),
-		string(lsp.MethodWorkspaceExecuteCommand):   rpc.Typed(s.executeCommand),
-		string(lsp.MethodTextDocumentRename):        rpc.Typed(s.rename),
+		string(lsp.MethodTextDocumentDidChange):         s.didChange,
+		protocol.MethodTextDocumentDiagnostic:           rpc.Typed(s.pullDiagnostics),
+		protocol.MethodTextDocumentRangesFormatting:     rpc.Typed(s.rangesFormatting),
+		string(lsp.MethodTextDocumentCodeAction):        rpc.Typed(s.codeActions),
+		string(lsp.MethodCodeActionResolve):             rpc.Typed(s.resolveAction),
+		string(lsp.MethodTextDocumentCompletion):        rpc.Typed(s.completion),
+		string(lsp.MethodCompletionItemResolve):         rpc.Typed(s.resolveCompletion),
+		protocol.MethodTextDocumentPrepareTypeHierarchy: rpc.Typed(s.prepareTypes),
+		protocol.MethodTypeHierarchySupertypes:          rpc.Typed(s.supertypes),
+		protocol.MethodTypeHierarchySubtypes:            rpc.Typed(s.subtypes),
+		protocol.MethodTextDocumentInlayHint:            rpc.Typed(s.inlayHints),
+		string(lsp.MethodWorkspaceExecuteCommand):       rpc.Typed(s.executeCommand),
+		string(lsp.MethodTextDocumentRename):            rpc.Typed(s.rename),
 	}
 }
 
@@ -49,6 +52,10 @@ func (s *server) handler() *lsp.Handler {
 		TextDocumentFoldingRange:      s.folding,
 		TextDocumentSelectionRange:    s.selections,
 		TextDocumentPrepareRename:     s.prepareRename,
+
+		TextDocumentPrepareCallHierarchy: s.prepareCalls,
+		CallHierarchyIncomingCalls:       s.incomingCalls,
+		CallHierarchyOutgoingCalls:       s.outgoingCalls,
 
 		TextDocumentSemanticTokensFull:      s.tokensFull,
 		TextDocumentSemanticTokensFullDelta: s.tokensDelta,

@@ -195,3 +195,37 @@ func TestSymbols(t *testing.T) {
 	}
 	assert.ElementsMatch(t, []string{"steel", "post", "A", "B", "c", "W"}, names)
 }
+
+// The load path: the case loads the node, the node is held by the column.
+func TestLoadPath(t *testing.T) {
+	c := start(t, lsptest.Options{})
+	c.Open(uri, frame)
+	c.WaitReceived("workspace/inlayHint/refresh", 1)
+	prepare := func(method, mark string) []lsp.CallHierarchyItem {
+		return lsptest.Ask[[]lsp.CallHierarchyItem](c, method, map[string]any{
+			"textDocument": map[string]any{"uri": uri}, "position": c.At(uri, mark)})
+	}
+	items := prepare("textDocument/prepareCallHierarchy", "case |W")
+	require.Len(t, items, 1)
+	assert.Equal(t, "W", c.Under(uri, items[0].SelectionRange))
+	out := lsptest.Ask[[]lsp.CallHierarchyOutgoingCall](c, "callHierarchy/outgoingCalls", map[string]any{"item": items[0]})
+	require.NotEmpty(t, out)
+	assert.Equal(t, "B", out[0].To.Name)
+	require.NotEmpty(t, out[0].FromRanges)
+	assert.Equal(t, "B: 4 kN along x", c.Under(uri, out[0].FromRanges[0]))
+	in := lsptest.Ask[[]lsp.CallHierarchyIncomingCall](c, "callHierarchy/incomingCalls", map[string]any{"item": out[0].To})
+	require.NotEmpty(t, in)
+	assert.Equal(t, "W", in[0].From.Name)
+
+	items = prepare("textDocument/prepareTypeHierarchy", "section |post")
+	require.Len(t, items, 1)
+	up := lsptest.Ask[[]lsp.CallHierarchyItem](c, "typeHierarchy/supertypes", map[string]any{"item": items[0]})
+	require.Len(t, up, 1)
+	assert.Equal(t, "steel", up[0].Name)
+	down := lsptest.Ask[[]lsp.CallHierarchyItem](c, "typeHierarchy/subtypes", map[string]any{"item": items[0]})
+	require.Len(t, down, 1)
+	assert.Equal(t, "c", down[0].Name)
+	assert.Empty(t, prepare("textDocument/prepareTypeHierarchy", "case |W"))
+	items[0].Data = nil
+	assert.EqualValues(t, -32602, c.Refused("typeHierarchy/subtypes", map[string]any{"item": items[0]}).Code)
+}
