@@ -2,7 +2,6 @@ package lsp
 
 import (
 	"encoding/json"
-	"errors"
 	"slices"
 
 	lsp "github.com/tliron/glsp/protocol_3_16"
@@ -85,12 +84,8 @@ func (s *server) resolveAction(r *rpc.Request, action *protocol.CodeAction) (any
 	}
 	m := momentOf(r)
 	title, edits, err := feature.ResolveAction(r.Context, m.Snapshot, pathOf(of.URI), of.Key)
-	var refusal feature.Refusal
-	switch {
-	case errors.As(err, &refusal):
-		return nil, rpc.Refuse("%v", err)
-	case err != nil:
-		return nil, err
+	if err != nil {
+		return nil, refused(err)
 	}
 	action.Title = title
 	if action.Edit, err = m.workspaceEdit(edits); err != nil {

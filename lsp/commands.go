@@ -2,11 +2,13 @@ package lsp
 
 import (
 	"encoding/json"
+	"errors"
 	"maps"
 	"slices"
 
 	lsp "github.com/tliron/glsp/protocol_3_16"
 
+	"spanwright/lsp/feature"
 	"spanwright/lsp/rpc"
 )
 
@@ -16,7 +18,8 @@ type command func(r *rpc.Request, place lsp.TextDocumentPositionParams) (any, er
 // commands are the commands of the server, by name.
 func (s *server) commands() map[string]command {
 	return map[string]command{
-		"spanwright.solveNow": s.solveNow,
+		"spanwright.solveNow":      s.solveNow,
+		"spanwright.showStiffness": s.showStiffness,
 	}
 }
 
@@ -54,4 +57,29 @@ func (s *server) solveNow(r *rpc.Request, place lsp.TextDocumentPositionParams) 
 	}
 	s.workspace.SolveNow(tree.File.Path)
 	return nil, nil
+}
+
+// showStiffness returns the stiffness at the node or of the member of a place,
+// as Markdown.
+func (s *server) showStiffness(r *rpc.Request, place lsp.TextDocumentPositionParams) (any, error) {
+	m := momentOf(r)
+	tree, offset, err := m.place(place)
+	if err != nil {
+		return nil, err
+	}
+	text, err := feature.StiffnessAt(r.Context, m.Snapshot, tree.File.Path, offset)
+	if err != nil {
+		return nil, refused(err)
+	}
+	return text, nil
+}
+
+// refused turns an error that is meant for the user into the protocol's; others
+// stay what they are.
+func refused(err error) error {
+	var words feature.Refusal
+	if errors.As(err, &words) {
+		return rpc.Refuse("%s", words)
+	}
+	return err
 }

@@ -14,6 +14,7 @@ import (
 
 	"spanwright/lang/generate"
 	"spanwright/lsp/lsptest"
+	"spanwright/lsp/rpc"
 )
 
 // serveAnnounced tells of every solve at once.
@@ -71,4 +72,22 @@ func TestCommandsThatMakeNoSense(t *testing.T) {
 	}
 	offered := c.ServerCapabilities["executeCommandProvider"].(map[string]any)["commands"]
 	assert.Contains(t, offered, "spanwright.solveNow")
+}
+
+func TestShowStiffness(t *testing.T) {
+	c := start(t, lsptest.Options{})
+	c.Open(uri, frame)
+	c.WaitReceived("workspace/inlayHint/refresh", 1)
+	ask := func(mark string) map[string]any {
+		return map[string]any{"command": "spanwright.showStiffness", "arguments": []any{
+			map[string]any{"uri": uri, "position": c.At(uri, mark)}}}
+	}
+	// HEA 100 of A = 21.24 cm2 over 3 m: EA/L = 148.7 MN/m (EN 10365).
+	text := lsptest.Ask[string](c, "workspace/executeCommand", ask("beam |c"))
+	assert.Contains(t, text, "EA/L | 149 MN/m")
+	text = lsptest.Ask[string](c, "workspace/executeCommand", ask("node |B"))
+	assert.Contains(t, text, "| uz | 149 MN/m | 149 MN/m |")
+	refused := c.Refused("workspace/executeCommand", ask("case |W"))
+	assert.EqualValues(t, rpc.CodeRequestFailed, refused.Code)
+	assert.Contains(t, refused.Message, "node or a member")
 }

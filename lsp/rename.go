@@ -18,7 +18,7 @@ func (s *server) prepareRename(context *glsp.Context, params *lsp.PrepareRenameP
 	}
 	span, name, err := feature.PrepareRename(m.Snapshot, tree.File.Path, offset)
 	if err != nil {
-		return nil, rpc.Refuse("%v", err)
+		return nil, refused(err)
 	}
 	return lsp.RangeWithPlaceholder{Range: s.rangeOf(tree.File, span), Placeholder: name}, nil
 }
@@ -32,7 +32,7 @@ func (s *server) rename(r *rpc.Request, params *lsp.RenameParams) (any, error) {
 	}
 	edits, err := feature.Rename(m.Snapshot, tree.File.Path, offset, params.NewName)
 	if err != nil {
-		return nil, rpc.Refuse("%v", err)
+		return nil, refused(err)
 	}
 	return m.workspaceEdit(edits)
 }
