@@ -42,7 +42,14 @@ async function look(page) {
   if (!drawn) {
     throw new Error("the picture is not drawn");
   }
-  await page.waitForTimeout(500);
+  // The numbers stand first; the picture is scrolled into sight.
+  const box = await page.locator(".monaco-hover:visible").first().boundingBox();
+  await page.mouse.move(box.x + box.width / 2, box.y + box.height / 2);
+  for (let i = 0; i < 4; i++) {
+    await page.mouse.wheel(0, 100);
+    await page.waitForTimeout(150);
+  }
+  await page.waitForTimeout(700);
   await page.screenshot({ path: screenshot });
   console.log("workbench: squiggle, lens, hint and picture seen; lens:", await lens.innerText());
 }

@@ -63,7 +63,7 @@ async function probe(out) {
   out.definition = (await run("vscode.executeDefinitionProvider", uri, place(document, "support A", 8))).map((l) => (l.range ?? l.targetRange).start.line);
   out.selection = (await run("vscode.executeSelectionRangeProvider", uri, [node])).length;
   out.completion = (await run("vscode.executeCompletionItemProvider", uri, place(document, "A -> ", 5))).items.map((i) => (typeof i.label === "string" ? i.label : i.label.label));
-  const help = await run("vscode.executeSignatureHelpProvider", uri, place(document, "section column = ", 17));
+  const help = await run("vscode.executeSignatureHelpProvider", uri, place(document, "HEB 200", 0));
   out.signatures = help ? help.signatures.map((s) => s.label) : [];
   out.workspaceSymbols = (await run("vscode.executeWorkspaceSymbolProvider", "r1")).map((s) => s.name);
 
@@ -80,10 +80,9 @@ async function probe(out) {
   await until(() => codes().length === 0, "no messages after the rename");
   out.renamed = /beam r1 .*-> apex/.test(document.getText());
 
-  const node_A = document.lineAt(place(document, "node A").line).text;
-  await replace(editor, node_A, "node A=(0,0)m");
+  await replace(editor, document.lineAt(place(document, "node A").line).text, "node A=(0,0)m");
   await run("editor.action.formatDocument");
-  out.formatted = document.getText().includes(node_A);
+  out.formatted = /^node A +=\s\(0, 0\) m$/m.test(document.getText());
 
   await replace(editor, "length/250", "length/2500");
   await until(() => codes().includes("limit-exceeded"), "limit-exceeded");
