@@ -28,7 +28,7 @@ func serveAnnounced(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logg
 // command.
 func TestLongSolves(t *testing.T) {
 	c := lsptest.Start(t, serveAnnounced, lsptest.Options{})
-	text := generate.TenThousand.Text()
+	text := generate.Building{Storeys: 10, Bays: 10, Rows: 10}.Text()
 	c.Open(uri, text)
 	create := c.WaitReceived("window/workDoneProgress/create", 1)
 	var asked struct{ Token string }

@@ -18,7 +18,7 @@ import (
 	"spanwright/lsp/lsptest"
 )
 
-var prefixes = flag.Int("prefixes", 12, "number of prefixes of each model that the requests are asked about; 0 stands for all")
+var prefixes = flag.Int("prefixes", 4, "number of prefixes of each model that the requests are asked about; 0 stands for all")
 
 // Every request about every state of a text that is being written, from its
 // first letter on, has an answer: no error of the server, no panic.

@@ -107,9 +107,9 @@ func TestFixes(t *testing.T) {
 // The smallest restraint that stops a mechanism is found when it is chosen; a
 // client that cannot wait gets it at once.
 func TestRestraintsOnDemand(t *testing.T) {
-	capabilities := pushing()
 	for name, late := range map[string]bool{"late": true, "at once": false} {
 		t.Run(name, func(t *testing.T) {
+			capabilities := pushing()
 			if !late {
 				lsptest.Set(capabilities, nil, "textDocument", "codeAction", "resolveSupport")
 			}
