@@ -161,12 +161,26 @@ func (a *assembly) firstAt(f *fragment, pairs []*pair) bool {
 
 // nodesTogether says that two nodes stand at one place.
 func (a *assembly) nodesTogether(first, second *fragment) {
+	if a.endsOfNothing(first, second) {
+		return
+	}
 	f := &finding{Diagnostic: diagnostic.Diagnostic{
 		Name: "coincident-nodes", Severity: diagnostic.Warning, Subject: second.nameSpan(),
 		Summary: fmt.Sprintf("Use %s instead of %s, or move one: they stand at the same place and nothing joins them.", first.full(), second.full()),
 	}}
 	f.relate(first, "%s stands here", first.full())
 	a.locate(second, f)
+}
+
+// endsOfNothing reports whether a member without a length joins two nodes: then
+// all has been said.
+func (a *assembly) endsOfNothing(first, second *fragment) bool {
+	uses := func(f *fragment, node *fragment) bool {
+		return slices.ContainsFunc(f.dependencies, func(d dependency) bool { return d.symbol == node.name })
+	}
+	return slices.ContainsFunc(a.all, func(f *fragment) bool {
+		return slices.ContainsFunc(f.outcome.findings, func(x finding) bool { return x.Name == "zero-length" }) && uses(f, first) && uses(f, second)
+	})
 }
 
 // nodeOnMember says that a node stands on a member that does not know it.

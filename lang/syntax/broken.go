@@ -258,7 +258,7 @@ func unknownStatement(text string, tokens []Token) Problem {
 	}
 	best, distance := "", 3
 	for _, k := range keywords {
-		if d := levenshtein.ComputeDistance(strings.ToLower(word), k.Word); d < distance && d < len(k.Word) {
+		if d := levenshtein.ComputeDistance(strings.ToLower(word), k.Word); d < distance && d < len(k.Word) && d < len(word) {
 			best, distance = k.Word, d
 		}
 	}

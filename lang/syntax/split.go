@@ -1,5 +1,7 @@
 package syntax
 
+import "strings"
+
 // A statement is one line. It goes on over the line's end while a bracket is
 // open or behind a comma, but a line that begins with a key word always begins
 // a new statement. The opening of a case or part ends with its brace; what
@@ -114,6 +116,13 @@ func (s *splitter) rest(kind Kind, end int) int {
 			}
 		}
 		lineBegins, comma = false, false
+		if opens && t.Kind == Text && strings.HasSuffix(strings.TrimRight(t.In(s.text), " \t"), "{") {
+			// A title that is not closed has swallowed the brace; its block is meant
+			// all the same, or every line of it would be another mistake.
+			s.enter(kind)
+			s.at = int(t.End)
+			return int(t.Start) + len(strings.TrimRight(t.In(s.text), " \t"))
+		}
 		if t.Kind == Sign {
 			switch s.text[t.Start] {
 			case ',':
