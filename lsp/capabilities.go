@@ -10,17 +10,15 @@ import (
 func (s *server) capabilities(encoding string) protocol.ServerCapabilities {
 	yes := true
 	c := protocol.ServerCapabilities{
-		PositionEncoding:  encoding,
-		InlayHintProvider: &protocol.InlayHintOptions{},
-		CompletionProvider: &protocol.CompletionOptions{CompletionOptions: lsp.CompletionOptions{
-			ResolveProvider: &yes, TriggerCharacters: []string{" ", ".", ">"},
-		}},
+		PositionEncoding:      encoding,
+		InlayHintProvider:     &protocol.InlayHintOptions{},
 		TypeHierarchyProvider: true,
 		ServerCapabilities: lsp.ServerCapabilities{
 			TextDocumentSync: lsp.TextDocumentSyncOptions{
 				OpenClose: &yes,
 				Change:    pointer(lsp.TextDocumentSyncKindIncremental),
 			},
+			CompletionProvider:              &lsp.CompletionOptions{ResolveProvider: &yes, TriggerCharacters: []string{" ", ".", ">"}},
 			HoverProvider:                   true,
 			DefinitionProvider:              true,
 			DocumentSymbolProvider:          true,

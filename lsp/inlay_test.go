@@ -26,7 +26,7 @@ func TestInlayHints(t *testing.T) {
 			line := strings.Split(c.Text(uri), "\n")[h.Position.Line]
 			assert.LessOrEqual(t, int(h.Position.Character), len(line))
 			word, _, _ := strings.Cut(line, " ")
-			labels[word] = h.Label.(string)
+			labels[word] = h.Label
 			if word != "let" {
 				assert.Contains(t, h.Tooltip.(map[string]any)["value"], "this version")
 			}

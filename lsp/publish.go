@@ -3,6 +3,7 @@ package lsp
 import (
 	"encoding/json"
 	"hash/fnv"
+	"slices"
 	"strconv"
 	"sync"
 
@@ -100,7 +101,7 @@ func (s *server) diagnostics(snapshot *workspace.Snapshot, path string, list []d
 		if d.Detail != "" {
 			item.Message += "\n" + d.Detail
 		}
-		if d.Unnecessary {
+		if d.Unnecessary && slices.Contains(s.client.DiagnosticTags, lsp.DiagnosticTagUnnecessary) {
 			item.Tags = []lsp.DiagnosticTag{lsp.DiagnosticTagUnnecessary}
 		}
 		item.RelatedInformation = s.related(snapshot, d)

@@ -31,6 +31,9 @@ func (s *server) signatureHelp(context *glsp.Context, params *lsp.SignatureHelpP
 			// of positions.
 			start, end := utf16Length(signature.Label[:p.Start]), utf16Length(signature.Label[:p.End])
 			information.Parameters[k] = lsp.ParameterInformation{Label: []uint32{start, end}}
+			if !s.client.SignatureLabelOffsets {
+				information.Parameters[k].Label = signature.Label[p.Start:p.End]
+			}
 		}
 		help.Signatures[i] = information
 	}

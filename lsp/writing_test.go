@@ -78,6 +78,11 @@ func TestSignatureHelp(t *testing.T) {
 	parameter := help.Signatures[0].Parameters[1].Label.([]any)
 	assert.Equal(t, "run", help.Signatures[0].Label[int(parameter[0].(float64)):int(parameter[1].(float64))])
 	assert.Nil(t, c.SignatureHelp(uri, lsp.Position{Line: 1000}))
+
+	plain := start(t, lsptest.Options{Capabilities: map[string]any{}})
+	plain.Open(uri, c.Text(uri))
+	help = plain.SignatureHelp(uri, plain.At(uri, "atan2(1 m, |2 m)"))
+	assert.Equal(t, "run", help.Signatures[0].Parameters[1].Label)
 }
 
 // A fix mends its diagnostic; its edit speaks of the version that it was made

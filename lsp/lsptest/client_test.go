@@ -46,7 +46,7 @@ func parrot(ctx context.Context, conn io.ReadWriteCloser, log *slog.Logger) int 
 				},
 				TextDocumentDidSave: func(*glsp.Context, *lsp.DidSaveTextDocumentParams) error {
 					c.Go(func(ctx context.Context) {
-						edit := protocol.ApplyWorkspaceEditParams{Edit: protocol.WorkspaceEdit{Changes: map[string][]lsp.TextEdit{
+						edit := map[string]any{"edit": protocol.WorkspaceEdit{Changes: map[string][]lsp.TextEdit{
 							uri: {{Range: lsp.Range{End: lsp.Position{Character: 3}}, NewText: "good"}},
 						}}}
 						var result struct{ Applied bool }

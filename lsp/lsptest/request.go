@@ -125,14 +125,12 @@ func (c *Client) Tokens(uri string) lsp.SemanticTokens {
 
 // CodeAction is one offered change, with its edit as it is decoded.
 type CodeAction struct {
-	Title       string                       `json:"title"`
-	Kind        string                       `json:"kind"`
-	IsPreferred bool                         `json:"isPreferred"`
-	Diagnostics []protocol.Diagnostic        `json:"diagnostics"`
-	Disabled    *protocol.CodeActionDisabled `json:"disabled,omitempty"`
-	Edit        *WorkspaceEdit               `json:"edit,omitempty"`
-	Command     *lsp.Command                 `json:"command,omitempty"`
-	Data        any                          `json:"data,omitempty"`
+	Title       string                `json:"title"`
+	Kind        string                `json:"kind"`
+	IsPreferred bool                  `json:"isPreferred"`
+	Diagnostics []protocol.Diagnostic `json:"diagnostics"`
+	Edit        *WorkspaceEdit        `json:"edit,omitempty"`
+	Data        any                   `json:"data,omitempty"`
 }
 
 // CodeActions asks for the changes on offer at a range, given the diagnostics

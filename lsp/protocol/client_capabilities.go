@@ -7,87 +7,43 @@ import (
 	glsp "github.com/tliron/glsp/protocol_3_16"
 )
 
-// ClientCapabilities is what a client said it can do, flat: the zero value is
-// a client that can do nothing beyond the protocol's minimum.
+// ClientCapabilities is what a client said it can do, as far as the server asks:
+// flat, and the zero value is a client that can do nothing beyond the protocol's
+// minimum.
 type ClientCapabilities struct {
-	// Name and Version are the client's own; empty where it did not say.
-	Name, Version string
 	// PositionEncodings are the client's, best first; empty means UTF-16 only.
 	PositionEncodings []string
-
-	// Window.
-	WorkDoneProgress bool // window/workDoneProgress/create may be sent
-	ShowDocument     bool
+	WorkDoneProgress  bool // window/workDoneProgress/create may be sent
 
 	// Workspace.
-	ApplyEdit              bool
-	DocumentChanges        bool     // versioned edits instead of a map
-	ResourceOperations     []string // "create", "rename", "delete"
-	ChangeAnnotations      bool
-	Configuration          bool // workspace/configuration may be sent
-	RegisterConfiguration  bool // didChangeConfiguration can be registered
-	WorkspaceFolders       bool
-	RegisterWatchedFiles   bool // didChangeWatchedFiles can be registered
-	WatchedFilesRelative   bool // with a RelativePattern
-	WorkspaceSymbolResolve []string
-	RefreshInlayHints      bool
-	RefreshDiagnostics     bool
-	RefreshCodeLenses      bool
-	RefreshSemanticTokens  bool
-	RefreshFoldingRanges   bool
+	DocumentChanges       bool // versioned edits instead of a map
+	Configuration         bool // workspace/configuration may be sent
+	RegisterConfiguration bool // didChangeConfiguration can be registered
+	RegisterWatchedFiles  bool // didChangeWatchedFiles can be registered
+	RefreshInlayHints     bool
+	RefreshDiagnostics    bool
+	RefreshCodeLenses     bool
+	RefreshSemanticTokens bool
 
-	// Completion.
-	Snippets                bool
-	LabelDetails            bool
-	InsertReplace           bool
-	CompletionFormats       []glsp.MarkupKind // of documentation, best first
-	CompletionResolve       []string          // properties that may come late
-	CompletionItemDefaults  []string          // fields of CompletionItemDefaults
-	CompletionTagDeprecated bool
+	// Help while writing and reading. Formats are best first.
+	Snippets              bool
+	CompletionFormats     []glsp.MarkupKind
+	HoverFormats          []glsp.MarkupKind
+	SignatureFormats      []glsp.MarkupKind
+	SignatureLabelOffsets bool // a parameter's label may be two offsets
 
-	// Hover and signature help.
-	HoverFormats             []glsp.MarkupKind // best first
-	SignatureFormats         []glsp.MarkupKind
-	SignatureLabelOffsets    bool // a parameter's label may be two offsets
-	SignatureActiveParameter bool // per signature
-
-	// Inlay hints and diagnostics.
-	InlayHints         bool
-	InlayHintResolve   []string // properties that may come late
+	// Diagnostics and code actions.
 	PullDiagnostics    bool
-	RelatedDocuments   bool // in a pulled report
 	RelatedInformation bool
 	DiagnosticTags     []glsp.DiagnosticTag
-	DiagnosticVersion  bool
-	DiagnosticData     bool
-	CodeDescription    bool
-
-	// Symbols, navigation, rename.
-	HierarchicalSymbols bool
-	DefinitionLinks     bool
-	PrepareRename       bool
-	TypeHierarchy       bool
-	CallHierarchy       bool
-	FoldingLinesOnly    bool
-	FoldingLimit        int // 0 means none
-
-	// Code actions.
-	CodeActionLiterals bool // actions, not only commands
-	CodeActionKinds    []glsp.CodeActionKind
 	CodeActionResolve  []string // properties that may come late
 	CodeActionData     bool
-	CodeActionDisabled bool
-	CodeActionPrefer   bool
 
-	// Semantic tokens.
-	SemanticTokenTypes     []string
-	SemanticTokenModifiers []string
-	SemanticTokensDelta    bool
-	SemanticTokensRange    bool
-	SemanticMultiline      bool
-
-	// Formatting.
-	RangesFormatting bool
+	// Structure of documents.
+	HierarchicalSymbols bool
+	PrepareRename       bool
+	FoldingLimit        int // 0 means none
+	RangesFormatting    bool
 }
 
 // OffersEncoding reports whether the client offered a position encoding.
@@ -112,83 +68,51 @@ func prefersMarkdown(formats []glsp.MarkupKind) bool {
 // DecodeClientCapabilities reads the parameters of initialize. A field of a
 // wrong type is an error; all other fields are read nevertheless.
 func DecodeClientCapabilities(initialize json.RawMessage) (ClientCapabilities, error) {
-	var params initializeParams
+	var params struct {
+		Capabilities announced `json:"capabilities"`
+	}
 	err := json.Unmarshal(initialize, &params)
-	c := params.flatten()
-	return c, err
+	return params.Capabilities.flat(), err
+}
+
+// announced is what of the client's capabilities is asked for, in the shape in
+// which it comes.
+type announced struct {
+	General struct {
+		PositionEncodings []string `json:"positionEncodings"`
+	} `json:"general"`
+	Window struct {
+		WorkDoneProgress bool `json:"workDoneProgress"`
+	} `json:"window"`
+	Workspace    announcedWorkspace `json:"workspace"`
+	TextDocument announcedDocument  `json:"textDocument"`
 }
 
 // supports is the shape of most capabilities with one switch.
 type supports struct {
 	Dynamic bool `json:"dynamicRegistration"`
 	Refresh bool `json:"refreshSupport"`
-	Link    bool `json:"linkSupport"`
 }
 
-type properties struct {
-	Properties []string `json:"properties"`
-}
-
-// initializeParams is the part of initialize that is asked for anything.
-type initializeParams struct {
-	ClientInfo struct {
-		Name    string `json:"name"`
-		Version string `json:"version"`
-	} `json:"clientInfo"`
-	Capabilities struct {
-		General struct {
-			PositionEncodings []string `json:"positionEncodings"`
-		} `json:"general"`
-		Window struct {
-			WorkDoneProgress bool `json:"workDoneProgress"`
-			ShowDocument     struct {
-				Support bool `json:"support"`
-			} `json:"showDocument"`
-		} `json:"window"`
-		Workspace    workspaceCapabilities    `json:"workspace"`
-		TextDocument textDocumentCapabilities `json:"textDocument"`
-	} `json:"capabilities"`
-}
-
-type workspaceCapabilities struct {
-	ApplyEdit     bool `json:"applyEdit"`
+type announcedWorkspace struct {
 	WorkspaceEdit struct {
-		DocumentChanges         bool      `json:"documentChanges"`
-		ResourceOperations      []string  `json:"resourceOperations"`
-		ChangeAnnotationSupport *struct{} `json:"changeAnnotationSupport"`
+		DocumentChanges bool `json:"documentChanges"`
 	} `json:"workspaceEdit"`
 	DidChangeConfiguration supports `json:"didChangeConfiguration"`
-	DidChangeWatchedFiles  struct {
-		supports
-		RelativePatternSupport bool `json:"relativePatternSupport"`
-	} `json:"didChangeWatchedFiles"`
-	Symbol struct {
-		ResolveSupport properties `json:"resolveSupport"`
-	} `json:"symbol"`
-	Configuration    bool     `json:"configuration"`
-	WorkspaceFolders bool     `json:"workspaceFolders"`
-	InlayHint        supports `json:"inlayHint"`
-	Diagnostics      supports `json:"diagnostics"`
-	CodeLens         supports `json:"codeLens"`
-	SemanticTokens   supports `json:"semanticTokens"`
-	FoldingRange     supports `json:"foldingRange"`
+	DidChangeWatchedFiles  supports `json:"didChangeWatchedFiles"`
+	Configuration          bool     `json:"configuration"`
+	InlayHint              supports `json:"inlayHint"`
+	Diagnostics            supports `json:"diagnostics"`
+	CodeLens               supports `json:"codeLens"`
+	SemanticTokens         supports `json:"semanticTokens"`
 }
 
-type textDocumentCapabilities struct {
+type announcedDocument struct {
 	Completion struct {
 		CompletionItem struct {
-			SnippetSupport       bool              `json:"snippetSupport"`
-			LabelDetailsSupport  bool              `json:"labelDetailsSupport"`
-			InsertReplaceSupport bool              `json:"insertReplaceSupport"`
-			DocumentationFormat  []glsp.MarkupKind `json:"documentationFormat"`
-			ResolveSupport       properties        `json:"resolveSupport"`
-			TagSupport           struct {
-				ValueSet []glsp.CompletionItemTag `json:"valueSet"`
-			} `json:"tagSupport"`
+			SnippetSupport      bool              `json:"snippetSupport"`
+			DocumentationFormat []glsp.MarkupKind `json:"documentationFormat"`
 		} `json:"completionItem"`
-		CompletionList struct {
-			ItemDefaults []string `json:"itemDefaults"`
-		} `json:"completionList"`
 	} `json:"completion"`
 	Hover struct {
 		ContentFormat []glsp.MarkupKind `json:"contentFormat"`
@@ -199,161 +123,66 @@ type textDocumentCapabilities struct {
 			ParameterInformation struct {
 				LabelOffsetSupport bool `json:"labelOffsetSupport"`
 			} `json:"parameterInformation"`
-			ActiveParameterSupport bool `json:"activeParameterSupport"`
 		} `json:"signatureInformation"`
 	} `json:"signatureHelp"`
-	InlayHint *struct {
-		supports
-		ResolveSupport properties `json:"resolveSupport"`
-	} `json:"inlayHint"`
-	Diagnostic *struct {
-		RelatedDocumentSupport bool `json:"relatedDocumentSupport"`
-	} `json:"diagnostic"`
+	Diagnostic         *struct{} `json:"diagnostic"`
 	PublishDiagnostics struct {
 		RelatedInformation bool `json:"relatedInformation"`
 		TagSupport         struct {
 			ValueSet []glsp.DiagnosticTag `json:"valueSet"`
 		} `json:"tagSupport"`
-		VersionSupport         bool `json:"versionSupport"`
-		DataSupport            bool `json:"dataSupport"`
-		CodeDescriptionSupport bool `json:"codeDescriptionSupport"`
 	} `json:"publishDiagnostics"`
+	CodeAction struct {
+		DataSupport    bool `json:"dataSupport"`
+		ResolveSupport struct {
+			Properties []string `json:"properties"`
+		} `json:"resolveSupport"`
+	} `json:"codeAction"`
 	DocumentSymbol struct {
 		Hierarchical bool `json:"hierarchicalDocumentSymbolSupport"`
 	} `json:"documentSymbol"`
-	Definition supports `json:"definition"`
-	Rename     struct {
+	Rename struct {
 		PrepareSupport bool `json:"prepareSupport"`
 	} `json:"rename"`
-	TypeHierarchy *struct{} `json:"typeHierarchy"`
-	CallHierarchy *struct{} `json:"callHierarchy"`
-	FoldingRange  struct {
-		LineFoldingOnly bool `json:"lineFoldingOnly"`
-		RangeLimit      int  `json:"rangeLimit"`
+	FoldingRange struct {
+		RangeLimit int `json:"rangeLimit"`
 	} `json:"foldingRange"`
-	CodeAction struct {
-		LiteralSupport *struct {
-			Kind struct {
-				ValueSet []glsp.CodeActionKind `json:"valueSet"`
-			} `json:"codeActionKind"`
-		} `json:"codeActionLiteralSupport"`
-		ResolveSupport     properties `json:"resolveSupport"`
-		DataSupport        bool       `json:"dataSupport"`
-		DisabledSupport    bool       `json:"disabledSupport"`
-		IsPreferredSupport bool       `json:"isPreferredSupport"`
-	} `json:"codeAction"`
-	SemanticTokens struct {
-		TokenTypes     []string `json:"tokenTypes"`
-		TokenModifiers []string `json:"tokenModifiers"`
-		Requests       struct {
-			// Both are a bool or an object.
-			Full  json.RawMessage `json:"full"`
-			Range json.RawMessage `json:"range"`
-		} `json:"requests"`
-		MultilineTokenSupport bool `json:"multilineTokenSupport"`
-	} `json:"semanticTokens"`
 	RangeFormatting struct {
 		RangesSupport bool `json:"rangesSupport"`
 	} `json:"rangeFormatting"`
 }
 
-func (p initializeParams) flatten() ClientCapabilities {
-	workspace, text := p.Capabilities.Workspace, p.Capabilities.TextDocument
-	c := ClientCapabilities{
-		Name:              p.ClientInfo.Name,
-		Version:           p.ClientInfo.Version,
-		PositionEncodings: p.Capabilities.General.PositionEncodings,
-		WorkDoneProgress:  p.Capabilities.Window.WorkDoneProgress,
-		ShowDocument:      p.Capabilities.Window.ShowDocument.Support,
+func (a *announced) flat() ClientCapabilities {
+	workspace, document := &a.Workspace, &a.TextDocument
+	signature := &document.SignatureHelp.SignatureInformation
+	return ClientCapabilities{
+		PositionEncodings: a.General.PositionEncodings,
+		WorkDoneProgress:  a.Window.WorkDoneProgress,
+
+		DocumentChanges:       workspace.WorkspaceEdit.DocumentChanges,
+		Configuration:         workspace.Configuration,
+		RegisterConfiguration: workspace.DidChangeConfiguration.Dynamic,
+		RegisterWatchedFiles:  workspace.DidChangeWatchedFiles.Dynamic,
+		RefreshInlayHints:     workspace.InlayHint.Refresh,
+		RefreshDiagnostics:    workspace.Diagnostics.Refresh,
+		RefreshCodeLenses:     workspace.CodeLens.Refresh,
+		RefreshSemanticTokens: workspace.SemanticTokens.Refresh,
+
+		Snippets:              document.Completion.CompletionItem.SnippetSupport,
+		CompletionFormats:     document.Completion.CompletionItem.DocumentationFormat,
+		HoverFormats:          document.Hover.ContentFormat,
+		SignatureFormats:      signature.DocumentationFormat,
+		SignatureLabelOffsets: signature.ParameterInformation.LabelOffsetSupport,
+
+		PullDiagnostics:    document.Diagnostic != nil,
+		RelatedInformation: document.PublishDiagnostics.RelatedInformation,
+		DiagnosticTags:     document.PublishDiagnostics.TagSupport.ValueSet,
+		CodeActionResolve:  document.CodeAction.ResolveSupport.Properties,
+		CodeActionData:     document.CodeAction.DataSupport,
+
+		HierarchicalSymbols: document.DocumentSymbol.Hierarchical,
+		PrepareRename:       document.Rename.PrepareSupport,
+		FoldingLimit:        document.FoldingRange.RangeLimit,
+		RangesFormatting:    document.RangeFormatting.RangesSupport,
 	}
-	workspace.flattenInto(&c)
-	text.flattenAssistInto(&c)
-	text.flattenStructureInto(&c)
-	return c
-}
-
-func (w workspaceCapabilities) flattenInto(c *ClientCapabilities) {
-	c.ApplyEdit = w.ApplyEdit
-	c.DocumentChanges = w.WorkspaceEdit.DocumentChanges
-	c.ResourceOperations = w.WorkspaceEdit.ResourceOperations
-	c.ChangeAnnotations = w.WorkspaceEdit.ChangeAnnotationSupport != nil
-	c.Configuration = w.Configuration
-	c.RegisterConfiguration = w.DidChangeConfiguration.Dynamic
-	c.WorkspaceFolders = w.WorkspaceFolders
-	c.RegisterWatchedFiles = w.DidChangeWatchedFiles.Dynamic
-	c.WatchedFilesRelative = w.DidChangeWatchedFiles.RelativePatternSupport
-	c.WorkspaceSymbolResolve = w.Symbol.ResolveSupport.Properties
-	c.RefreshInlayHints = w.InlayHint.Refresh
-	c.RefreshDiagnostics = w.Diagnostics.Refresh
-	c.RefreshCodeLenses = w.CodeLens.Refresh
-	c.RefreshSemanticTokens = w.SemanticTokens.Refresh
-	c.RefreshFoldingRanges = w.FoldingRange.Refresh
-}
-
-// flattenAssistInto fills in what helps while typing and reading.
-func (t textDocumentCapabilities) flattenAssistInto(c *ClientCapabilities) {
-	item := t.Completion.CompletionItem
-	c.Snippets = item.SnippetSupport
-	c.LabelDetails = item.LabelDetailsSupport
-	c.InsertReplace = item.InsertReplaceSupport
-	c.CompletionFormats = item.DocumentationFormat
-	c.CompletionResolve = item.ResolveSupport.Properties
-	c.CompletionTagDeprecated = slices.Contains(item.TagSupport.ValueSet, glsp.CompletionItemTagDeprecated)
-	c.CompletionItemDefaults = t.Completion.CompletionList.ItemDefaults
-
-	c.HoverFormats = t.Hover.ContentFormat
-	signature := t.SignatureHelp.SignatureInformation
-	c.SignatureFormats = signature.DocumentationFormat
-	c.SignatureLabelOffsets = signature.ParameterInformation.LabelOffsetSupport
-	c.SignatureActiveParameter = signature.ActiveParameterSupport
-
-	if t.InlayHint != nil {
-		c.InlayHints = true
-		c.InlayHintResolve = t.InlayHint.ResolveSupport.Properties
-	}
-	if t.Diagnostic != nil {
-		c.PullDiagnostics = true
-		c.RelatedDocuments = t.Diagnostic.RelatedDocumentSupport
-	}
-	c.RelatedInformation = t.PublishDiagnostics.RelatedInformation
-	c.DiagnosticTags = t.PublishDiagnostics.TagSupport.ValueSet
-	c.DiagnosticVersion = t.PublishDiagnostics.VersionSupport
-	c.DiagnosticData = t.PublishDiagnostics.DataSupport
-	c.CodeDescription = t.PublishDiagnostics.CodeDescriptionSupport
-}
-
-// flattenStructureInto fills in what reads or changes the document's structure.
-func (t textDocumentCapabilities) flattenStructureInto(c *ClientCapabilities) {
-	c.HierarchicalSymbols = t.DocumentSymbol.Hierarchical
-	c.DefinitionLinks = t.Definition.Link
-	c.PrepareRename = t.Rename.PrepareSupport
-	c.TypeHierarchy = t.TypeHierarchy != nil
-	c.CallHierarchy = t.CallHierarchy != nil
-	c.FoldingLinesOnly = t.FoldingRange.LineFoldingOnly
-	c.FoldingLimit = t.FoldingRange.RangeLimit
-
-	if literal := t.CodeAction.LiteralSupport; literal != nil {
-		c.CodeActionLiterals = true
-		c.CodeActionKinds = literal.Kind.ValueSet
-	}
-	c.CodeActionResolve = t.CodeAction.ResolveSupport.Properties
-	c.CodeActionData = t.CodeAction.DataSupport
-	c.CodeActionDisabled = t.CodeAction.DisabledSupport
-	c.CodeActionPrefer = t.CodeAction.IsPreferredSupport
-
-	c.SemanticTokenTypes = t.SemanticTokens.TokenTypes
-	c.SemanticTokenModifiers = t.SemanticTokens.TokenModifiers
-	c.SemanticMultiline = t.SemanticTokens.MultilineTokenSupport
-	c.SemanticTokensRange = isOffered(t.SemanticTokens.Requests.Range)
-	var full struct {
-		Delta bool `json:"delta"`
-	}
-	c.SemanticTokensDelta = json.Unmarshal(t.SemanticTokens.Requests.Full, &full) == nil && full.Delta
-	c.RangesFormatting = t.RangeFormatting.RangesSupport
-}
-
-// isOffered reports whether a "bool or object" capability is there.
-func isOffered(raw json.RawMessage) bool {
-	text := string(raw)
-	return text != "" && text != "false" && text != "null"
 }

@@ -2,15 +2,6 @@ package protocol
 
 import glsp "github.com/tliron/glsp/protocol_3_16"
 
-// CodeActionTriggerKind says why code actions were asked for.
-type CodeActionTriggerKind int
-
-// The reasons for asking: by the user, or by the client on its own.
-const (
-	CodeActionTriggerInvoked   CodeActionTriggerKind = 1
-	CodeActionTriggerAutomatic CodeActionTriggerKind = 2
-)
-
 // CodeActionParams asks for the actions at a range.
 type CodeActionParams struct {
 	TextDocument glsp.TextDocumentIdentifier `json:"textDocument"`
@@ -22,25 +13,17 @@ type CodeActionParams struct {
 type CodeActionContext struct {
 	Diagnostics []Diagnostic          `json:"diagnostics"`
 	Only        []glsp.CodeActionKind `json:"only,omitempty"`
-	TriggerKind CodeActionTriggerKind `json:"triggerKind,omitempty"`
 }
 
-// CodeAction is a change or command on offer. Every field survives decoding.
+// CodeAction is a change on offer. Every field survives decoding.
 type CodeAction struct {
 	Title       string              `json:"title"`
 	Kind        glsp.CodeActionKind `json:"kind,omitempty"`
 	Diagnostics []Diagnostic        `json:"diagnostics,omitempty"`
 	IsPreferred bool                `json:"isPreferred,omitempty"`
-	Disabled    *CodeActionDisabled `json:"disabled,omitempty"`
 	Edit        *WorkspaceEdit      `json:"edit,omitempty"`
-	Command     *glsp.Command       `json:"command,omitempty"`
 	// Data comes back in codeAction/resolve.
 	Data any `json:"data,omitempty"`
-}
-
-// CodeActionDisabled says why an action cannot be used here.
-type CodeActionDisabled struct {
-	Reason string `json:"reason"`
 }
 
 // WorkspaceEdit is a change over several documents. A client that announced
@@ -61,10 +44,4 @@ type TextDocumentEdit struct {
 type OptionalVersionedTextDocumentIdentifier struct {
 	URI     glsp.DocumentUri `json:"uri"`
 	Version *int32           `json:"version"`
-}
-
-// ApplyWorkspaceEditParams asks the client to make a change.
-type ApplyWorkspaceEditParams struct {
-	Label string        `json:"label,omitempty"`
-	Edit  WorkspaceEdit `json:"edit"`
 }

@@ -30,9 +30,9 @@ func TestServerCapabilitiesAreFlat(t *testing.T) {
 	c.HoverProvider = true
 	c.PositionEncoding = PositionEncodingUTF8
 	c.InlayHintProvider = &InlayHintOptions{}
-	c.CompletionProvider = &CompletionOptions{CompletionItem: &CompletionItemOptions{LabelDetailsSupport: true}}
+	c.CompletionProvider = &glsp.CompletionOptions{TriggerCharacters: []string{"."}}
 	assert.JSONEq(t, `{"capabilities":{"hoverProvider":true,"positionEncoding":"utf-8","inlayHintProvider":{},
-		"completionProvider":{"completionItem":{"labelDetailsSupport":true}}}}`, encode(t, InitializeResult{Capabilities: c}))
+		"completionProvider":{"triggerCharacters":["."]}}}`, encode(t, InitializeResult{Capabilities: c}))
 }
 
 // What a diagnostic carries comes back as it was sent.
@@ -75,14 +75,15 @@ func TestClientCapabilities(t *testing.T) {
 			"completion":{"completionItem":{"snippetSupport":true,"documentationFormat":["markdown"]}},
 			"diagnostic":{},
 			"rangeFormatting":{"rangesSupport":true},
-			"codeAction":{"codeActionLiteralSupport":{"codeActionKind":{"valueSet":["quickfix"]}}}}}}`))
+			"codeAction":{"dataSupport":true,"resolveSupport":{"properties":["edit"]}}}}}`))
 	require.NoError(t, err)
 	assert.True(t, c.OffersEncoding("utf-8"))
 	assert.True(t, c.OffersEncoding("utf-16"))
 	assert.False(t, c.OffersEncoding("utf-32"))
 	assert.True(t, c.WorkDoneProgress && c.Configuration && c.RegisterWatchedFiles && c.RefreshInlayHints)
 	assert.False(t, c.HoverMarkdown(), "the first format is the client's choice")
-	assert.True(t, c.CompletionMarkdown() && c.Snippets && c.PullDiagnostics && c.RangesFormatting && c.CodeActionLiterals)
+	assert.True(t, c.CompletionMarkdown() && c.Snippets && c.PullDiagnostics && c.RangesFormatting && c.CodeActionData)
+	assert.Equal(t, []string{"edit"}, c.CodeActionResolve)
 
 	// A field of a wrong type costs that field, no other.
 	c, err = DecodeClientCapabilities(json.RawMessage(`{"capabilities":{"window":{"workDoneProgress":"yes"},"workspace":{"configuration":true}}}`))

@@ -14,9 +14,7 @@ type InitializeResult struct {
 type ServerCapabilities struct {
 	glsp.ServerCapabilities
 	// PositionEncoding is one of those the client offered; empty means UTF-16.
-	PositionEncoding string `json:"positionEncoding,omitempty"`
-	// CompletionProvider takes the place of the embedded one.
-	CompletionProvider    *CompletionOptions `json:"completionProvider,omitempty"`
+	PositionEncoding      string             `json:"positionEncoding,omitempty"`
 	InlayHintProvider     *InlayHintOptions  `json:"inlayHintProvider,omitempty"`
 	DiagnosticProvider    *DiagnosticOptions `json:"diagnosticProvider,omitempty"`
 	TypeHierarchyProvider bool               `json:"typeHierarchyProvider,omitempty"`
