@@ -213,6 +213,7 @@ func (s *Statement) missingSign(tokens []Token) *Problem {
 			return &Problem{Name: "missing-equals", Span: after(words, 1), Summary: fmt.Sprintf("Put \"=\" behind %s: write %s.", words[1].In(s.Text), s.Kind.Form()),
 				Fix: &ProblemFix{Title: "Insert =", Span: source.At(int(words[1].End)), New: " ="}}
 		}
+		return s.missingArrow(words)
 	case CaseKind, PartKind:
 		if !has["{"] {
 			return &Problem{Name: "missing-brace", Span: after(words, len(words)-1), Summary: fmt.Sprintf("Open the block with \"{\" at the end of this line: write %s.", s.Kind.Form()),
@@ -226,6 +227,22 @@ func (s *Statement) missingSign(tokens []Token) *Problem {
 		if !has["<="] && !has[">="] && !has["<"] && !has[">"] {
 			return &Problem{Name: "missing-comparison", Span: after(words, len(words)-1), Summary: fmt.Sprintf("Say what the limit is, with <= or >=: write %s.", s.Kind.Form())}
 		}
+	}
+	return nil
+}
+
+// missingArrow finds two nodes of a member with nothing between them.
+func (s *Statement) missingArrow(words []Token) *Problem {
+	if s.Kind != BeamKind && s.Kind != BarKind && s.Kind != LinkKind && s.Kind != SpringKind {
+		return nil
+	}
+	for i := 3; i+1 < len(words); i++ {
+		a, b := words[i], words[i+1]
+		if a.Kind != Word || b.Kind != Word || a.In(s.Text) == "of" || b.In(s.Text) == "of" || words[i-1].Kind != Sign || words[i-1].In(s.Text) == "," {
+			continue
+		}
+		return &Problem{Name: "missing-arrow", Span: b.Span(), Summary: fmt.Sprintf("Write -> between %s and %s.", a.In(s.Text), b.In(s.Text)),
+			Fix: &ProblemFix{Title: "Insert ->", Span: source.At(int(a.End)), New: " ->"}}
 	}
 	return nil
 }
