@@ -27,7 +27,7 @@ func TestPublishedInOrder(t *testing.T) {
 			c.Edit(uri, "support A pinned", "support A fixed")
 		}
 	}
-	assert.Empty(t, c.WaitDiagnostics(uri))
+	assert.Empty(t, c.WaitDiagnosticsThat(uri, "are none", none))
 	c.Edit(uri, "support A fixed", "support A pinned")
 	d := c.WaitDiagnostic(uri, "mechanism")
 	assert.Contains(t, d.Message, "A")
