@@ -48,7 +48,7 @@ func TestWrongCaseFindsTheUnitThatWasMeant(t *testing.T) {
 func TestNumbersAreWrittenForPeople(t *testing.T) {
 	for want, value := range map[string]float64{
 		"21.4": 21.44, "−18.2": -18.16, "9.7": 9.699, "12346": 12345.6, "0.0123": 0.01234,
-		"0": -0.0, "1.23e−7": 1.234e-7, "2.1e11": 2.1e11, "∞": math.Inf(1), "100": 99.96,
+		"0": math.Copysign(0, -1), "1.23e−7": 1.234e-7, "2.1e11": 2.1e11, "∞": math.Inf(1), "100": 99.96,
 	} {
 		assert.Equal(t, want, Number(value, 3))
 	}

@@ -90,9 +90,6 @@ type reference struct {
 // cycle is a set of definitions that need each other, in the order of the text.
 type cycle struct{ members []*fragment }
 
-// span returns the fragment's place in its file.
-func (f *fragment) span() source.Span { return f.sheet.tree.Units[f.unit].Span() }
-
 // nameSpan returns the place of the declared name relative to the statement,
 // or of the statement's first word.
 func (f *fragment) nameSpan() source.Span {

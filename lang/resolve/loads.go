@@ -102,8 +102,7 @@ type loading struct {
 	*evaluation
 	tree       *syntax.LoadLine
 	amount     value
-	until      value // the second amount of a linear change; count 0 where there is none
-	direction  *syntax.Direction
+	until      value      // the second amount of a linear change; count 0 where there is none
 	way        [3]float64 // unit vector
 	axes       model.Axes
 	hasWay     bool

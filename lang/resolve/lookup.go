@@ -121,7 +121,7 @@ func (e *evaluation) unknownInExpression(n *syntax.NameNode) {
 			fix("Write "+u.Symbol, n.Span, u.Symbol)
 		return
 	}
-	if e.behindNumber(n) && e.resembles(n.Text) == false {
+	if e.behindNumber(n) && !e.resembles(n.Text) {
 		if near := nearest(n.Text, unitSymbols()); len(near) > 0 {
 			e.fail("unknown-unit", n.Span, "Did you mean %s? %s is no unit.", either(near), n.Text).
 				fix("Write "+near[0], n.Span, near[0])
@@ -189,8 +189,7 @@ func (e *evaluation) need(n *syntax.Name, space Space, want string, byValue bool
 	return w
 }
 
-func isNode(k Kind) bool   { return k == NodeName }
-func isMember(k Kind) bool { return k.Member() }
+func isNode(k Kind) bool { return k == NodeName }
 
 // needNode looks a node up.
 func (e *evaluation) needNode(n *syntax.Name, byValue bool) *fragment {

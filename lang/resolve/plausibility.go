@@ -92,7 +92,7 @@ func (l *loading) plausibleLoad(kind model.LoadKind, amount float64) {
 	if amount == 0 {
 		return
 	}
-	least, most := 0.0, math.Inf(1)
+	var least, most float64
 	what := ""
 	switch kind {
 	case model.NodeForce, model.PointForce:
