@@ -128,7 +128,7 @@ func TestEveryFormIsRead(t *testing.T) {
 func TestBrokenLinesGiveOneMessageEach(t *testing.T) {
 	for line, want := range map[string]string{
 		`beem r1 = A -> B of s`:                  "unknown-statement",
-		`beam r1 = A B of s`:                     "does-not-fit",
+		`beam r1 = A B of s`:                     "missing-arrow",
 		`beam r1 = A of s`:                       "missing-arrow",
 		`beam r1 A -> B of s`:                    "missing-equals",
 		`beam = A -> B of s`:                     "missing-name",
