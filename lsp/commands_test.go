@@ -91,3 +91,28 @@ func TestShowStiffness(t *testing.T) {
 	assert.EqualValues(t, rpc.CodeRequestFailed, refused.Code)
 	assert.Contains(t, refused.Message, "node or a member")
 }
+
+// A file that two models use is seen through one of them; its lenses say which,
+// and change it.
+func TestPinModel(t *testing.T) {
+	folder, main, common := parts(t)
+	_, other := write(t, folder, "other.span", fileText(t, main))
+	c := start(t, lsptest.Options{Folders: []string{uriOf(folder)}})
+	c.Open(main, fileText(t, main))
+	c.Open(other, fileText(t, other))
+	c.Open(common, fileText(t, common))
+	c.WaitDiagnostics(common)
+	titles := func() (all []string) {
+		for _, l := range c.Lenses(common) {
+			all = append(all, l.Command.Title)
+		}
+		return all
+	}
+	assert.Equal(t, []string{"seen through main", "see it through other"}, titles())
+	choose := c.Lenses(common)[1].Command
+	c.Execute(choose.Command, choose.Arguments...)
+	assert.Equal(t, []string{"seen through other", "see it through main"}, titles())
+	refused := c.Refused("workspace/executeCommand", map[string]any{"command": choose.Command,
+		"arguments": []any{map[string]any{"uri": common, "model": uri}}})
+	assert.EqualValues(t, rpc.CodeRequestFailed, refused.Code)
+}
