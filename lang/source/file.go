@@ -38,11 +38,12 @@ type File struct {
 	Text string
 
 	lines []int // offset of each line's first byte; lines[0] == 0
+	long  *longLines
 }
 
 // New returns a file with its line table.
 func New(path, text string) *File {
-	return &File{Path: path, Text: text, lines: lineStarts(text)}
+	return &File{Path: path, Text: text, lines: lineStarts(text), long: &longLines{}}
 }
 
 func lineStarts(text string) []int {
@@ -111,7 +112,8 @@ func before(offset int) int {
 func (f *File) Position(offset int) Position {
 	offset = f.clamp(offset)
 	line := f.LineAt(offset)
-	return Position{Line: line + 1, Column: utf8.RuneCountInString(f.Text[f.lines[line]:offset]) + 1}
+	m := f.markBefore(f.lines[line], f.LineEnd(line), func(m mark) bool { return m.offset > offset })
+	return Position{Line: line + 1, Column: m.runes + utf8.RuneCountInString(f.Text[m.offset:offset]) + 1}
 }
 
 // Point returns the place of an offset in the protocol's terms. An offset
@@ -127,8 +129,9 @@ func (f *File) Point(offset int, encoding Encoding) Point {
 	if encoding == UTF8 {
 		return Point{line, offset - start}
 	}
-	units := 0
-	for _, r := range f.Text[start:offset] {
+	m := f.markBefore(start, f.LineEnd(line), func(m mark) bool { return m.offset > offset })
+	units := m.units
+	for _, r := range f.Text[m.offset:offset] {
 		units += unitsOf(r)
 	}
 	return Point{line, units}
@@ -156,11 +159,12 @@ func (f *File) Offset(p Point, encoding Encoding) int {
 		}
 		return offset
 	}
-	units := 0
-	for i, r := range f.Text[start:end] {
+	m := f.markBefore(start, end, func(m mark) bool { return m.units > p.Character })
+	units := m.units
+	for i, r := range f.Text[m.offset:end] {
 		units += unitsOf(r)
 		if units > p.Character {
-			return start + i
+			return m.offset + i
 		}
 	}
 	return end
