@@ -40,6 +40,13 @@ func (s *Session) assemble() *Result {
 		ShearFlexible: s.header.shearFlexible, Gravity: s.header.gravity,
 	}
 	r := &Result{Model: a.model}
+	// A version is about as long as the one before.
+	a.all = make([]*fragment, 0, s.lengths.all+8)
+	for k, n := range s.lengths.kinds {
+		if n > 0 {
+			a.kinds[k] = make([]*fragment, 0, n+8)
+		}
+	}
 	a.addFile(s.main, r)
 	for _, sh := range s.order {
 		if sh != s.main {
@@ -51,6 +58,10 @@ func (s *Session) assemble() *Result {
 	}
 	for _, part := range s.shadowed() {
 		a.gather(s.shadows[part].fragments, false)
+	}
+	s.lengths.all = len(a.all)
+	for k := range a.kinds {
+		s.lengths.kinds[k] = len(a.kinds[k])
 	}
 	a.build()
 	a.report(r)

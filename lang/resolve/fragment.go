@@ -10,6 +10,7 @@ import (
 // part as it stands in one of the part's places. It belongs to a session,
 // which keeps it from edit to edit; its outcome is replaced, never changed.
 type fragment struct {
+	nameAt    source.Span // see nameSpan; worked out once, because every version asks for it
 	sheet     *sheet
 	statement *syntax.Statement
 	unit      int    // index into the sheet's units, of the edit at hand
@@ -93,6 +94,9 @@ type cycle struct{ members []*fragment }
 // nameSpan returns the place of the declared name relative to the statement,
 // or of the statement's first word.
 func (f *fragment) nameSpan() source.Span {
+	if f.nameAt.End > 0 {
+		return f.nameAt
+	}
 	if n := f.statement.Declares(); n != nil {
 		return n.Span()
 	}

@@ -32,6 +32,13 @@ type Session struct {
 	visits   int
 	budget   int // fragments of placed parts that may still be made
 	geometry geometry
+	lengths  lengths // of the last version's lists
+}
+
+// lengths are how long lists of the last version were.
+type lengths struct {
+	all   int
+	kinds [lastKind]int
 }
 
 // header is what the model line says.
@@ -147,6 +154,7 @@ func (s *Session) touch(symbol *symbol) {
 // add takes a new fragment in.
 func (s *Session) add(f *fragment) {
 	f.state, f.must = dirty, true
+	f.nameAt = f.nameSpan()
 	if f.parameter < 0 {
 		f.kind = kindOf(f.statement)
 		if n := f.statement.Declares(); n != nil && n.Text != "" {
