@@ -161,3 +161,27 @@ test("a mechanism is explained, and a fix stops it", async () => {
   await session.diagnostics(uri, (l) => l.length === 0);
   assert.equal(session.text(uri), original);
 });
+
+test("five broken lines among forty give five messages, and the others still answer", async () => {
+  const lines = session.text(uri).trimEnd().split("\n");
+  assert.ok(lines.length >= 40);
+  const broken = ["beam = A -> B", "node N1 (1, 2) m", "let a = 3 m +", "suport A pinned", "material odd = {"];
+  for (const [i, line] of broken.entries()) {
+    lines.splice(11 + 4 * i, 0, line);
+  }
+  const other = await session.open("broken.span", lines.join("\n") + "\n");
+  const list = await session.diagnostics(other, (l) => l.length > 0);
+  const places = list.filter((d) => d.severity === 1).map((d) => d.range.start.line);
+  assert.deepEqual(places, broken.map((line) => lines.indexOf(line)), JSON.stringify(list, null, 1));
+  const textDocument = { uri: other };
+  assert.match(await session.hover(other, session.place(other, "r1", { from: "beam r1" })), /IPE 300/);
+  const offered = await session.request("textDocument/completion", { textDocument, position: session.place(other, "A -> ", { after: true, from: "beam c1" }) });
+  assert.ok(offered.items.some((i) => i.label === "B"));
+  await session.replace(other, "node A  = (0, 0) m", "node A=(0,0)m");
+  const edits = await session.request("textDocument/formatting", { textDocument, options: { tabSize: 4, insertSpaces: true } });
+  await session.apply(other, edits);
+  assert.match(session.text(other), /^node A +=\s\(0, 0\) m$/m);
+  for (const line of broken) {
+    assert.ok(session.text(other).includes("\n" + line + "\n"), line);
+  }
+});
