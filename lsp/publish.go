@@ -2,6 +2,7 @@ package lsp
 
 import (
 	"encoding/json"
+	"fmt"
 	"hash/fnv"
 	"slices"
 	"strconv"
@@ -81,8 +82,25 @@ func (s *server) pulls(snapshot *workspace.Snapshot, path, report string) {
 	p.pulled[path] = report
 }
 
+// mostDiagnostics bounds what is said about a file at once. Nobody reads
+// further, and clients choke on a hundred thousand.
+const mostDiagnostics = 1000
+
+// shortened cuts a list that nobody reads, and says so in its last entry.
+func shortened(list []diagnostic.Diagnostic) []diagnostic.Diagnostic {
+	if len(list) <= mostDiagnostics {
+		return list
+	}
+	last := list[mostDiagnostics-1]
+	return append(slices.Clone(list[:mostDiagnostics-1]), diagnostic.Diagnostic{
+		Severity: diagnostic.Information, File: last.File, Subject: last.Subject,
+		Summary: fmt.Sprintf("From here on %d more messages about this file are not listed. Mend those above first.", len(list)-mostDiagnostics+1),
+	})
+}
+
 // diagnostics turns diagnostics of a file into the protocol's.
 func (s *server) diagnostics(snapshot *workspace.Snapshot, path string, list []diagnostic.Diagnostic) []protocol.Diagnostic {
+	list = shortened(list)
 	items := make([]protocol.Diagnostic, 0, len(list))
 	tree, err := snapshot.Tree(path)
 	if err != nil {
@@ -91,9 +109,11 @@ func (s *server) diagnostics(snapshot *workspace.Snapshot, path string, list []d
 	for _, d := range list {
 		item := protocol.Diagnostic{
 			Severity: lsp.DiagnosticSeverity(d.Severity),
-			Code:     string(d.Name),
 			Source:   "spanwright",
 			Message:  d.Summary,
+		}
+		if d.Name != "" {
+			item.Code = string(d.Name)
 		}
 		if tree != nil {
 			item.Range = s.rangeOf(tree.File, visible(tree.File, d.Subject))

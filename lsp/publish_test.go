@@ -109,6 +109,18 @@ func TestSharedFiles(t *testing.T) {
 
 func none(list []protocol.Diagnostic) bool { return len(list) == 0 }
 
+// Of a hopeless file the first thousand messages are listed, and how many there
+// are besides.
+func TestAHopelessFile(t *testing.T) {
+	c := start(t, lsptest.Options{Capabilities: pushing()})
+	c.Open(uri, frame+strings.Repeat("node\n", 3000))
+	list := c.WaitDiagnostics(uri)
+	require.Len(t, list, mostDiagnostics)
+	assert.Contains(t, list[mostDiagnostics-1].Message, "2001 more messages")
+	assert.Nil(t, list[mostDiagnostics-1].Code)
+	assert.NotEmpty(t, list[mostDiagnostics-2].Code)
+}
+
 // An error in a file that is not open is published about that file, and taken
 // back when the model is closed.
 func TestFilesThatAreNotOpen(t *testing.T) {

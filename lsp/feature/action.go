@@ -26,6 +26,10 @@ type Action struct {
 	Key   string
 }
 
+// mostMended bounds the diagnostics for which fixes are offered at once: nobody
+// chooses from a longer list.
+const mostMended = 50
+
 // Actions returns what is on offer for a part of a file: fixes of what is said
 // about it, larger or smaller sections for broken limits, supports that stop a
 // mechanism, and other units for a number.
@@ -36,17 +40,24 @@ func Actions(s *workspace.Snapshot, path string, part source.Span) []Action {
 	}
 	var list []Action
 	all := s.Diagnostics(path)
+	touched, mended := 0, map[diagnostic.Name]bool{}
 	for i := range all {
 		d := &all[i]
 		if !touches(d, part) {
 			continue
+		}
+		if touched++; touched > mostMended {
+			break
 		}
 		for _, f := range d.Fixes {
 			if edits, ok := editsOf(s, d, f); ok {
 				list = append(list, Action{Title: f.Title, Fix: true, Preferred: f.Preferred, Diagnostic: d, Edits: edits})
 			}
 		}
-		list = append(list, mendAll(s, d, all)...)
+		if !mended[d.Name] {
+			list = append(list, mendAll(s, d, all)...)
+			mended[d.Name] = true
+		}
 		switch d.Name {
 		case diagnostic.Mechanism:
 			list = append(list, restrainActions(&v, d)...)
