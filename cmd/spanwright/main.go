@@ -18,6 +18,7 @@ type commands struct {
 	Solve      solveCommand              `cmd:"" help:"Print reactions, movements, member forces and limits."`
 	Compare    compareCommand            `cmd:"" help:"Say what changed between two models, and what that did."`
 	External   externalDiffCommand       `cmd:"" name:"external-diff" help:"Compare as git's external diff."`
+	Section    sectionCommand            `cmd:"" help:"Print the properties of a section, or the sizes of a series."`
 	Stiffness  stiffnessCommand          `cmd:"" help:"Print the stiffness of the structure at a node, or of a member."`
 	Explain    explainCommand            `cmd:"" help:"Say what a diagnostic means and how to mend it."`
 	Serve      serveCommand              `cmd:"" help:"Run the language server on standard input and output."`

@@ -102,7 +102,7 @@ func finiteOrNull(v float64) *float64 {
 	return &v
 }
 
-func writeDocument(w io.Writer, document documentOfStiffness) error {
+func writeDocument(w io.Writer, document any) error {
 	encoder := json.NewEncoder(w)
 	encoder.SetEscapeHTML(false)
 	encoder.SetIndent("", "  ")
