@@ -28,6 +28,7 @@ func (l *layout) spell(s statement) {
 	pieces := l.normal(s)
 	r := row{depth: l.depth, kind: paragraphKind(s.Kind), first: len(l.cells)}
 	start := len(l.spelled)
+	grade := s.Kind == syntax.MaterialKind && !strings.Contains(s.Text, "{")
 	flush := func() {
 		if end := len(l.spelled); end > start {
 			l.cells = append(l.cells, cell{start: start, end: end, width: utf8.RuneCount(l.spelled[start:end])})
@@ -47,6 +48,8 @@ func (l *layout) spell(s statement) {
 			}
 		case r.kind != 0 && cellStarts(s.Kind, pieces, i):
 			flush()
+		case i > 0 && grade && p.glued && !isSign(p, "=") && !isSign(&pieces[i-1], "="):
+			// A grade such as A572-50 stays as it is written.
 		case i > 0 && space(&pieces[i-1], p):
 			l.spelled = append(l.spelled, ' ')
 		}
@@ -217,6 +220,8 @@ func dotted(text string) string {
 	}
 	return strings.Join(parts, "*")
 }
+
+func isSign(p *piece, sign string) bool { return p.kind == syntax.Sign && p.text == sign }
 
 func unit(text string) bool {
 	_, ok := quantity.Lookup(text)

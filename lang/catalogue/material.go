@@ -70,7 +70,7 @@ var grades = sync.OnceValue(func() (g struct {
 	list   []Material
 	byName map[string]int
 }) {
-	g.list = slices.Concat(europeanSteels())
+	g.list = slices.Concat(europeanSteels(), americanSteels(), concretes(), timbers(), aluminiums())
 	g.byName = map[string]int{}
 	for i, m := range g.list {
 		g.byName[foldGrade(m.Grade)] = i
@@ -81,7 +81,8 @@ var grades = sync.OnceValue(func() (g struct {
 // foldGrade brings the spellings of a grade together: no blanks, hyphens or
 // underscores, case aside.
 func foldGrade(text string) string {
-	return strings.ToUpper(strings.NewReplacer(" ", "", "-", "", "_", "", "\t", "").Replace(text))
+	name := strings.ToUpper(strings.NewReplacer(" ", "", "-", "", "_", "", "\t", "").Replace(text))
+	return strings.TrimPrefix(name, "ENAW")
 }
 
 // FindGrade returns a material by its grade: "S275", "c30/37", "GL 24h",

@@ -87,7 +87,8 @@ type Grade struct {
 // Parse takes the tokens up to the end.
 func (g *Grade) Parse(lex *lexer.PeekingLexer) error {
 	first := lex.Peek()
-	if first.EOF() || TokenKind(first.Type) != Word {
+	// Aluminium alloys begin with a number: 6082-T6.
+	if first.EOF() || TokenKind(first.Type) != Word && TokenKind(first.Type) != Number {
 		return participle.NextMatch
 	}
 	g.Span = spanOf(first)

@@ -311,7 +311,7 @@ func (c *completer) functions() {
 
 func (c *completer) grades() {
 	for i, m := range catalogue.AllGrades() {
-		c.add(Proposal{Label: m.Grade, Detail: m.Title, Kind: GradeProposal, Rank: i / 100, Key: "grade:" + m.Grade})
+		c.add(Proposal{Label: m.Grade, Detail: m.Title, Kind: GradeProposal, Rank: i, Key: "grade:" + m.Grade})
 	}
 }
 
