@@ -3,7 +3,10 @@ package frame
 import (
 	"context"
 	"math"
+	"runtime"
 	"slices"
+
+	"golang.org/x/sync/errgroup"
 
 	"spanwright/analysis/element"
 	"spanwright/analysis/sparse"
@@ -14,11 +17,11 @@ import (
 // context's. previous, if not nil, is a structure whose symbolic work may serve
 // again.
 func (s *Structure) Factor(ctx context.Context, previous *Structure) error {
+	s.update, s.softest = nil, 1
 	if s.unknowns == 0 {
 		s.path = Path{Kind: Nothing}
 		return nil
 	}
-	s.update = nil
 	pattern := s.pattern()
 	if previous != nil && previous.symbolic != nil && previous.symbolic.Fits(pattern) {
 		s.symbolic, s.path = previous.symbolic, Path{Kind: Numeric}
@@ -159,11 +162,8 @@ func (s *Structure) substitute(ctx context.Context, x []float64, count int) erro
 func (s *Structure) solveAll(ctx context.Context, list []loading) ([]*State, error) {
 	n := s.unknowns
 	right := make([]float64, n*len(list))
-	for i := range list {
-		if err := ctx.Err(); err != nil {
-			return nil, err
-		}
-		s.rightSide(&list[i], right[i*n:(i+1)*n])
+	if err := eachCase(ctx, len(list), func(i int) { s.rightSide(&list[i], right[i*n:(i+1)*n]) }); err != nil {
+		return nil, err
 	}
 	x := append([]float64(nil), right...)
 	if err := s.substitute(ctx, x, len(list)); err != nil {
@@ -181,15 +181,36 @@ func (s *Structure) solveAll(ctx context.Context, list []loading) ([]*State, err
 		return s.solveAll(ctx, list)
 	}
 	states := make([]*State, len(list))
-	for i := range list {
+	if err := eachCase(ctx, len(list), func(i int) {
 		states[i] = s.stateOf(&list[i], x[i*n:(i+1)*n])
 		states[i].backward = errors[i]
 		s.finish(states[i])
+	}); err != nil {
+		return nil, err
+	}
+	for i := range states {
 		if err := s.rebalance(ctx, right[i*n:(i+1)*n], states[i]); err != nil {
 			return nil, err
 		}
 	}
 	return states, ctx.Err()
+}
+
+// eachCase does a piece of work for each load case with all processors. What a
+// case comes to does not depend on the others.
+func eachCase(ctx context.Context, count int, work func(i int)) error {
+	var group errgroup.Group
+	group.SetLimit(runtime.GOMAXPROCS(0))
+	for i := range count {
+		group.Go(func() error {
+			if err := ctx.Err(); err != nil {
+				return err
+			}
+			work(i)
+			return nil
+		})
+	}
+	return group.Wait()
 }
 
 // enough is the componentwise backward error at which refining a solution gains
@@ -206,13 +227,16 @@ func (s *Structure) refine(ctx context.Context, b, x []float64, count int) ([]fl
 	if n == 0 {
 		return errors, nil
 	}
-	residuals, size := make([]float64, n*count), make([]float64, n)
+	residuals := make([]float64, n*count)
 	measure := func(i int, x []float64) float64 {
-		return s.backwardError(b[i*n:(i+1)*n], x, residuals[i*n:(i+1)*n], size)
+		return s.backwardError(b[i*n:(i+1)*n], x, residuals[i*n:(i+1)*n])
+	}
+	if err := eachCase(ctx, count, func(i int) { errors[i] = measure(i, x[i*n:(i+1)*n]) }); err != nil {
+		return nil, err
 	}
 	var rough []int // solutions that may be bettered
-	for i := range count {
-		if errors[i] = measure(i, x[i*n:(i+1)*n]); errors[i] > enough {
+	for i, e := range errors {
+		if e > enough {
 			rough = append(rough, i)
 		}
 	}
@@ -227,18 +251,24 @@ func (s *Structure) refine(ctx context.Context, b, x []float64, count int) ([]fl
 		if err := s.substitute(ctx, steps, len(rough)); err != nil {
 			return nil, err
 		}
-		still := rough[:0]
-		for k, i := range rough {
+		bettered := make([]bool, len(rough))
+		if err := eachCase(ctx, len(rough), func(k int) {
+			i := rough[k]
 			better, old := steps[k*n:(k+1)*n], x[i*n:(i+1)*n]
 			for u := range better {
 				better[u] += old[u]
 			}
 			if e := measure(i, better); e < errors[i] {
-				errors[i] = e
+				errors[i], bettered[k] = e, true
 				copy(old, better)
-				if e > enough {
-					still = append(still, i)
-				}
+			}
+		}); err != nil {
+			return nil, err
+		}
+		still := rough[:0]
+		for k, i := range rough {
+			if bettered[k] && errors[i] > enough {
+				still = append(still, i)
 			}
 		}
 		rough = still
@@ -313,9 +343,9 @@ func (s *Structure) resistance(x []float64) []float64 {
 	return out
 }
 
-// backwardError returns that of a solution, and fills its residual. size is room
-// for work.
-func (s *Structure) backwardError(b, x, residual, size []float64) float64 {
+// backwardError returns that of a solution, and fills its residual.
+func (s *Structure) backwardError(b, x, residual []float64) float64 {
+	size := make([]float64, len(x))
 	s.matrix.Residual(b, x, residual, size)
 	worst, largest := 0.0, slices.Max(size)
 	for i := range residual {

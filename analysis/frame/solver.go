@@ -13,6 +13,10 @@ type Solver struct {
 	structure *Structure
 	loadings  []loading
 	oneWay    *oneWay // nil where all parts act both ways
+	// states are those of the cases once they are solved; kept are states of the
+	// previous version whose case and stiffness have not changed, by case, nil for
+	// none.
+	states, kept []*State
 }
 
 // Prepare makes a solver: the structure with its factor, and the loads. previous,
@@ -39,6 +43,8 @@ func Prepare(ctx context.Context, m *model.Model, previous *Solver) (*Solver, er
 	}
 	if s.hasOneWay() {
 		solver.oneWay = newOneWay(s)
+	} else if previous != nil && previous.oneWay == nil && s.path.Kind == LoadsOnly {
+		solver.keepStates(previous)
 	}
 	return solver, nil
 }
@@ -73,8 +79,8 @@ func (v *Solver) Condition(ctx context.Context) (float64, error) {
 func (v *Solver) Cases(ctx context.Context) (states []*State, errs []error, err error) {
 	errs = make([]error, len(v.loadings))
 	if v.oneWay == nil {
-		states, err = v.structure.solveAll(ctx, v.loadings)
-		return states, errs, err
+		v.states, err = v.solveChanged(ctx)
+		return v.states, errs, err
 	}
 	states = make([]*State, len(v.loadings))
 	for i := range v.loadings {
@@ -84,6 +90,39 @@ func (v *Solver) Cases(ctx context.Context) (states []*State, errs []error, err 
 		}
 	}
 	return states, errs, nil
+}
+
+// keepStates finds the cases that the previous version solved already.
+func (v *Solver) keepStates(previous *Solver) {
+	v.kept = make([]*State, len(v.loadings))
+	for i := range min(len(v.loadings), len(previous.states)) {
+		if v.loadings[i].equal(&previous.loadings[i]) {
+			kept := *previous.states[i]
+			kept.structure, kept.loading = v.structure, v.loadings[i]
+			v.kept[i] = &kept
+		}
+	}
+}
+
+// solveChanged solves the cases that are not known yet.
+func (v *Solver) solveChanged(ctx context.Context) ([]*State, error) {
+	states := make([]*State, len(v.loadings))
+	copy(states, v.kept)
+	var list []loading
+	var at []int
+	for i := range states {
+		if states[i] == nil {
+			list, at = append(list, v.loadings[i]), append(at, i)
+		}
+	}
+	solved, err := v.structure.solveAll(ctx, list)
+	if err != nil {
+		return nil, err
+	}
+	for k, i := range at {
+		states[i] = solved[k]
+	}
+	return states, nil
 }
 
 // Combination solves a sum of load cases as a load of its own, as one-way parts

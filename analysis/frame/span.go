@@ -1,6 +1,8 @@
 package frame
 
 import (
+	"slices"
+
 	"spanwright/analysis/element"
 	"spanwright/lang/model"
 )
@@ -14,6 +16,13 @@ type loading struct {
 	amounts []float64 // by hold; nil for none
 	// applied is the resultant of all forces about the origin.
 	applied vector6
+}
+
+// equal reports whether two loadings on structures with the same nodes, members
+// and supports are the same to the last digit.
+func (l *loading) equal(o *loading) bool {
+	return l.applied == o.applied && slices.Equal(l.nodes, o.nodes) && slices.Equal(l.amounts, o.amounts) &&
+		slices.EqualFunc(l.spans, o.spans, slices.Equal[[]element.SpanLoad])
 }
 
 // loadings works out the loading of each case of the model.
