@@ -19,6 +19,7 @@ type Factor struct {
 	stack    []float64
 	noted    []int
 	tiny     float64
+	multiply *multiplier
 
 	smallest   float64 // pivot of the scaled matrix
 	smallestAt int
@@ -32,7 +33,15 @@ var ErrMisuse = errors.New("sparse: sizes do not agree")
 
 // NewFactor returns a factor without numbers.
 func NewFactor(s *Symbolic) *Factor {
-	return &Factor{symbolic: s, scale: make([]float64, s.n), panels: make([]float64, s.factor), stack: make([]float64, s.updates)}
+	return &Factor{symbolic: s, scale: make([]float64, s.n), panels: make([]float64, s.factor), stack: make([]float64, s.updates), multiply: newMultiplier(false)}
+}
+
+// NewPlainFactor returns a factor that keeps to gonum's kernels, whatever the
+// processor can do: for comparison.
+func NewPlainFactor(s *Symbolic) *Factor {
+	f := NewFactor(s)
+	f.multiply = newMultiplier(true)
+	return f
 }
 
 // Factorize computes the factor of a matrix. It returns the unknowns, in the
@@ -99,7 +108,7 @@ func (f *Factor) front(fr *front, m *Matrix) {
 	}
 	if pivots > 0 {
 		below := blas64.General{Rows: left, Cols: pivots, Stride: pivots, Data: panel[pivots*pivots:]}
-		blas64.Syrk(blas.NoTrans, -1, below, 1, blas64.Symmetric{N: left, Stride: left, Data: update, Uplo: blas.Lower})
+		f.multiply.subtractSquare(below, blas64.Symmetric{N: left, Stride: left, Data: update, Uplo: blas.Lower})
 	}
 	copy(f.stack[fr.update:fr.update+left*left], update)
 }
@@ -166,11 +175,10 @@ func (f *Factor) eliminate(fr *front, panel []float64, rows, pivots int) {
 		blas64.Trsm(blas.Right, blas.Trans, 1, top, below)
 		if rest := pivots - k - w; rest > 0 {
 			square := blas64.General{Rows: rest, Cols: w, Stride: pivots, Data: panel[(k+w)*pivots+k:]}
-			blas64.Syrk(blas.NoTrans, -1, square, 1, blas64.Symmetric{N: rest, Stride: pivots, Data: panel[(k+w)*pivots+k+w:], Uplo: blas.Lower})
+			f.multiply.subtractSquare(square, blas64.Symmetric{N: rest, Stride: pivots, Data: panel[(k+w)*pivots+k+w:], Uplo: blas.Lower})
 			if under := rows - pivots; under > 0 {
 				lower := blas64.General{Rows: under, Cols: w, Stride: pivots, Data: panel[pivots*pivots+k:]}
-				blas64.Gemm(blas.NoTrans, blas.Trans, -1, lower, square, 1,
-					blas64.General{Rows: under, Cols: rest, Stride: pivots, Data: panel[pivots*pivots+k+w:]})
+				f.multiply.subtract(lower, square, blas64.General{Rows: under, Cols: rest, Stride: pivots, Data: panel[pivots*pivots+k+w:]})
 			}
 		}
 	}
