@@ -29,5 +29,5 @@ func (q Quantity) String() string {
 // sectionForces are the quantities that are section forces.
 var sectionForces = [...]Quantity{N, Vy, Vz, T, My, Mz}
 
-// component returns the course that a section force is.
+// component returns the curve that a section force is.
 func (q Quantity) component() element.Component { return element.Component(q) }

@@ -85,14 +85,14 @@ func (r *Results) Find(name string) (Result, bool) {
 // alongBudget bounds the polynomials that are kept between questions.
 const alongBudget = 1 << 18
 
-// alongCache keeps the courses along the members that were asked about last.
+// alongCache keeps the curves along the members that were asked about last.
 type alongCache struct {
 	mutex sync.Mutex
 	held  map[int]*envelope.Member
 	size  int
 }
 
-// coursesOf returns the courses along a member in every basic state.
+// coursesOf returns the curves along a member in every basic state.
 func (r *Results) coursesOf(member int) *envelope.Member {
 	c := &r.along
 	c.mutex.Lock()
@@ -115,7 +115,7 @@ func (r *Results) coursesOf(member int) *envelope.Member {
 	return m
 }
 
-// recover works out the courses along a member in every basic state.
+// recover works out the curves along a member in every basic state.
 func (r *Results) recover(member int) *envelope.Member {
 	known := true
 	pieces := make([][]element.Piece, len(r.states))

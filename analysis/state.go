@@ -12,7 +12,7 @@ type state interface {
 	Movement(node int) [6]float64
 	// Reaction returns what the supports of a node do to it, global, N and Nm.
 	Reaction(node int) [6]float64
-	// Pieces returns the courses along a whole physical member, and whether the
+	// Pieces returns the curves along a whole physical member, and whether the
 	// departure from its chord is known.
 	Pieces(member int) (pieces []element.Piece, bentKnown bool)
 	// Ends returns what the nodes do to the member's first and last end, in

@@ -31,7 +31,7 @@ type Mark struct {
 	At    float64 // m from the first end
 }
 
-// largest is the size to which the course is scaled.
+// largest is the size to which the curve is scaled.
 func (c *Course) largest() float64 {
 	return math.Max(math.Abs(c.Most.Value), math.Abs(c.Least.Value))
 }
@@ -40,7 +40,7 @@ func (c *Course) largest() float64 {
 // rounding, and not worth a label.
 const negligible = 1e-6
 
-// positive and negative say which signs the course takes.
+// positive and negative say which signs the curve takes.
 func (c *Course) positive() bool { return c.Most.Value > negligible*c.largest() }
 func (c *Course) negative() bool { return c.Least.Value < -negligible*c.largest() }
 

@@ -119,7 +119,7 @@ func (f *frame) point(at, value float64) vg.Point {
 	return vg.Point{X: f.x(at), Y: f.axis + vg.Length(value*f.scale)}
 }
 
-// area fills the part of one sign between the course and the member.
+// area fills the part of one sign between the curve and the member.
 func (p *painter) area(c *Course, f *frame, sign float64, fill, line color.Color) {
 	var outline vg.Path
 	outline.Move(f.point(0, 0))
@@ -169,7 +169,7 @@ func (p *painter) member(c *Course, f *frame) {
 	p.text(c.Last, f.right+7, f.axis-textSize/3, start, ink)
 }
 
-// extreme marks and labels a value on the side of the course that it is on.
+// extreme marks and labels a value on the side of the curve that it is on.
 func (p *painter) extreme(c *Course, f *frame, m Mark, line color.Color) {
 	at := f.point(m.At, m.Value)
 	p.dot(at, 2, line)

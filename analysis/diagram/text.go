@@ -11,7 +11,7 @@ var blocks = []rune(" ▁▂▃▄▅▆▇█")
 
 // Text draws a course with rows of block characters, width characters wide, for
 // a fixed-width font. Each line ends without a line end's blank; there is one
-// line for each sign that the course takes, and one that says so where it is
+// line for each sign that the curve takes, and one that says so where it is
 // zero throughout.
 func Text(c Course, width int) string {
 	if width < 1 {

@@ -26,7 +26,7 @@ const (
 	components
 )
 
-// Piece is the course of everything between two breaks, as polynomials of the
+// Piece is the curve of everything between two breaks, as polynomials of the
 // distance from the piece's start.
 type Piece struct {
 	From, To float64 // m from end 1
@@ -42,10 +42,10 @@ type Curves struct {
 	BentYKnown, BentZKnown bool
 }
 
-// Recover returns the courses along the element for node movements d and the
+// Recover returns the curves along the element for node movements d and the
 // loads on its length. breaks are the places at which pieces meet; nil stands
 // for [Element.Breaks] of the loads. Given breaks must hold those and may hold
-// more, so that the courses of several cases can be added piece by piece.
+// more, so that the curves of several cases can be added piece by piece.
 func (e *Element) Recover(d Vector, loads []SpanLoad, breaks []float64) *Curves {
 	if breaks == nil {
 		breaks = e.Breaks(loads)
@@ -133,7 +133,7 @@ func addSpread(q, m *[3]Polynomial, l SpanLoad, from, to, length float64) {
 }
 
 // integrateAxially fills U: the straight course between the ends, and on it the
-// departure that the course of the strain gives.
+// departure that the curve of the strain gives.
 func (e *Element) integrateAxially(c *Curves, ends Vector, strain float64) {
 	e.integrate(c, ends[0], ends[6], U, N, e.props.EA, strain)
 }
@@ -147,7 +147,7 @@ func (e *Element) integrateTwist(c *Curves, ends Vector) {
 	e.integrate(c, ends[3], ends[9], ThetaX, T, git, 0)
 }
 
-// integrate fills the course of a movement whose slope is force/stiffness +
+// integrate fills the curve of a movement whose slope is force/stiffness +
 // free, from its value at end 1 to that at end 2.
 func (e *Element) integrate(c *Curves, first, last float64, movement, force Component, stiffness, free float64) {
 	value := 0.0
@@ -170,7 +170,7 @@ func (e *Element) integrate(c *Curves, first, last float64, movement, force Comp
 	}
 }
 
-// plane names what belongs together in bending one way: the courses, the end
+// plane names what belongs together in bending one way: the curves, the end
 // freedom across the member, and +1 where a positive turn tilts the member
 // toward positive movement, else −1.
 type plane struct {

@@ -21,7 +21,7 @@
 //
 // Small movements, linear elastic material. Bending is Bernoulli–Euler where
 // the shear stiffness is zero ("no shear deformation") and Timoshenko where it
-// is given; torsion is St Venant's. Stiffness, end forces and the courses are
+// is given; torsion is St Venant's. Stiffness, end forces and the curves are
 // the exact solutions of the differential equations, so no mesh is needed.
 //
 // What does not live here: nodes, global axes, rigid offsets, assembly

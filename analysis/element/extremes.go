@@ -57,7 +57,7 @@ func (c *Curves) At(component Component, x float64, side Side) float64 {
 	return chosen.Courses[component].At(x - chosen.From)
 }
 
-// Add adds factor times the courses of another case with the same breaks.
+// Add adds factor times the curves of another case with the same breaks.
 func (c *Curves) Add(factor float64, other *Curves) {
 	for i := range c.Pieces {
 		for k := range c.Pieces[i].Courses {

@@ -32,7 +32,7 @@ func Line(from, to float64, force1, force2 [3]float64) SpanLoad {
 	return SpanLoad{From: from, To: to, Force1: force1, Force2: force2}
 }
 
-// Breaks returns the distances at which the courses of forces or their slopes
+// Breaks returns the distances at which the curves of forces or their slopes
 // change, sorted, each once, 0 and the length included. Places closer together
 // than rounding count as one.
 func (e *Element) Breaks(loads []SpanLoad) []float64 {
@@ -132,7 +132,7 @@ type movement struct{ u, v, w, twist, slopeV, slopeW float64 }
 
 // tip returns the movement of the free end 1 of the cantilever clamped at end 2
 // under section forces that start from nothing. Integrated from a tip at rest
-// the course ends at end 2 with what the tip must have had the other way.
+// the curve ends at end 2 with what the tip must have had the other way.
 func (e *Element) tip(pieces []Piece, loads []SpanLoad) movement {
 	var end movement
 	strain, perY, perZ := initialStrain(loads)

@@ -11,6 +11,14 @@ import (
 // Parse reads a whole file. It never fails: a statement that cannot be read is
 // broken, and the others stand.
 func Parse(file *source.File) *Tree {
+	t := cutUp(file, strings.Clone)
+	readAll(t.Units)
+	return t
+}
+
+// cutUp cuts a file into statements and leaves them unread. keep makes the text
+// that a statement holds.
+func cutUp(file *source.File, keep func(string) string) *Tree {
 	t := &Tree{File: file}
 	s := splitter{text: file.Text}
 	for {
@@ -19,19 +27,18 @@ func Parse(file *source.File) *Tree {
 		if !ok {
 			break
 		}
-		t.Units = append(t.Units, unitOf(file.Text, c, before))
+		t.Units = append(t.Units, unitOf(file.Text, c, before, keep))
 	}
 	t.end = s.block
-	readAll(t.Units)
 	return t
 }
 
-// unitOf returns the unit of a cut with its statement unread.
-func unitOf(text string, c cut, before Block) Unit {
+// unitOf returns the unit of a cut with its statement unread. A clone keeps the
+// statement from holding the whole old text alive.
+func unitOf(text string, c cut, before Block, keep func(string) string) Unit {
 	return Unit{
 		Start: c.start, End: c.end, Block: c.block, before: before, implicit: c.implicit,
-		// The clone keeps the statement from holding the whole old text alive.
-		Statement: &Statement{Kind: c.kind, Text: strings.Clone(text[c.start:c.end])},
+		Statement: &Statement{Kind: c.kind, Text: keep(text[c.start:c.end])},
 	}
 }
 
@@ -118,7 +125,7 @@ func (t *Tree) Reparse(file *source.File) *Tree {
 				break
 			}
 		}
-		n.Units = append(n.Units, unitOf(text, c, before))
+		n.Units = append(n.Units, unitOf(text, c, before, strings.Clone))
 	}
 	n.takeOver(t, kept, resume)
 	for _, u := range t.Units[resume:] {

@@ -28,21 +28,7 @@ type Patterns struct {
 // Outline cuts a file into statements and does not read them: they have their
 // kind and text only. [Patterns] says what else one may want to know.
 func Outline(file *source.File) *Tree {
-	t := &Tree{File: file}
-	s := splitter{text: file.Text}
-	for {
-		before := s.block
-		c, ok := s.next()
-		if !ok {
-			break
-		}
-		t.Units = append(t.Units, Unit{
-			Start: c.start, End: c.end, Block: c.block, before: before, implicit: c.implicit,
-			Statement: &Statement{Kind: c.kind, Text: file.Text[c.start:c.end]},
-		})
-	}
-	t.end = s.block
-	return t
+	return cutUp(file, func(s string) string { return s })
 }
 
 // Of returns the pattern of a statement, read or not. tokens are those of its

@@ -171,9 +171,14 @@ var optionForms = []Signature{
 }
 
 func optionHelp(written string) Help {
-	h := Help{Signatures: optionForms, Parameter: -1}
-	last := strings.TrimSpace(written[strings.LastIndexByte(written, ',')+1:])
-	if i := slices.IndexFunc(optionForms, func(s Signature) bool { return last != "" && strings.HasPrefix(s.Label, firstWord(last)) }); i >= 0 {
+	return beginningLike(optionForms, written[strings.LastIndexByte(written, ',')+1:])
+}
+
+// beginningLike picks the form that begins with the first word of a text.
+func beginningLike(forms []Signature, text string) Help {
+	h := Help{Signatures: forms, Parameter: -1}
+	first, _, _ := strings.Cut(strings.TrimSpace(text), " ")
+	if i := slices.IndexFunc(forms, func(s Signature) bool { return first != "" && strings.HasPrefix(s.Label, first) }); i >= 0 {
 		h.Active = i
 	}
 	return h
@@ -190,15 +195,5 @@ var shapeForms = []Signature{
 }
 
 func shapeHelp(written string) Help {
-	h := Help{Signatures: shapeForms, Parameter: -1}
-	behind := strings.TrimSpace(written[strings.IndexByte(written, '=')+1:])
-	if i := slices.IndexFunc(shapeForms, func(s Signature) bool { return behind != "" && strings.HasPrefix(s.Label, firstWord(behind)) }); i >= 0 {
-		h.Active = i
-	}
-	return h
-}
-
-func firstWord(text string) string {
-	first, _, _ := strings.Cut(text, " ")
-	return first
+	return beginningLike(shapeForms, written[strings.IndexByte(written, '=')+1:])
 }
