@@ -5,6 +5,8 @@ import (
 	"errors"
 	"time"
 
+	"golang.org/x/sync/errgroup"
+
 	"spanwright/analysis/combine"
 	"spanwright/analysis/frame"
 	"spanwright/lang/model"
@@ -55,15 +57,26 @@ func (r *Results) solve(ctx context.Context, previous *Results) error {
 		return err
 	}
 	r.solver = solver
-	if err := r.audit(ctx, previous); err != nil {
-		return err
-	}
 	start = time.Now()
 	defer func() { r.timings.Solve = time.Since(start) }()
-	cases, reasons, err := solver.Cases(ctx)
-	if err != nil {
+	// The condition takes about as long as the cases, and both only read the
+	// factor; one-way parts make factors of their own.
+	var condition float64
+	var beside errgroup.Group
+	beside.Go(func() (err error) {
+		condition, err = r.condition(ctx, previous)
 		return err
+	})
+	if solver.OneWay() {
+		if err := beside.Wait(); err != nil {
+			return err
+		}
 	}
+	cases, reasons, err := solver.Cases(ctx)
+	if failed := beside.Wait(); failed != nil || err != nil {
+		return errors.Join(err, failed)
+	}
+	r.audit(condition)
 	if solver.OneWay() {
 		return r.solveEach(ctx, cases, reasons)
 	}

@@ -38,22 +38,22 @@ type Trust struct {
 // Trust returns how good the numbers are.
 func (r *Results) Trust() Trust { return r.trust }
 
-// audit looks at the factor: the condition, and movements that hardly anything
-// resists.
-func (r *Results) audit(ctx context.Context, previous *Results) error {
-	r.trust.Softest = 1
-	if softest := r.solver.Softest(); softest > 0 {
-		r.trust.Softest = softest
-	}
+// condition estimates that of the scaled stiffness, or takes it over where the
+// factor is the same.
+func (r *Results) condition(ctx context.Context, previous *Results) (float64, error) {
 	kind := r.solver.Path().Kind
 	if previous != nil && previous.solver != nil && (kind == frame.LoadsOnly || kind == frame.Updated) {
-		r.trust.Condition = previous.trust.Condition // the factor is the same
-	} else {
-		condition, err := r.solver.Condition(ctx)
-		if err != nil {
-			return err
-		}
-		r.trust.Condition = condition
+		return previous.trust.Condition, nil
+	}
+	return r.solver.Condition(ctx)
+}
+
+// audit notes how far the stiffness can be trusted, and says so where that is
+// not far.
+func (r *Results) audit(condition float64) {
+	r.trust.Softest, r.trust.Condition = 1, condition
+	if softest := r.solver.Softest(); softest > 0 {
+		r.trust.Softest = softest
 	}
 	switch {
 	case r.trust.Softest < frame.Soft:
@@ -61,7 +61,6 @@ func (r *Results) audit(ctx context.Context, previous *Results) error {
 	case r.trust.Condition > MaxCondition:
 		r.doubt(diagnostic.IllConditioned, fmt.Sprintf("Very stiff parts stand beside very soft ones: movements may be off in the %s digit (condition %.0e). Check very large and very small stiffnesses and their units.", ordinal(digitsLeft(r.trust.Condition)), r.trust.Condition))
 	}
-	return nil
 }
 
 // digitsLeft estimates the decimal digits that a condition leaves of sixteen.
