@@ -11,6 +11,7 @@ import (
 	"github.com/stretchr/testify/require"
 
 	"spanwright/analysis"
+	format "spanwright/fmt"
 	"spanwright/lang/resolve"
 	"spanwright/lang/source"
 	"spanwright/lang/syntax"
@@ -199,7 +200,8 @@ func same(t *testing.T, a, b *analysis.Results, what, text string) {
 
 // TestRandomModels holds a thousand random structures to what every right answer
 // has: equilibrium; reciprocity (Betti and Maxwell); superposition; the same
-// answer whatever the order of the statements, and with a node put into a beam.
+// answer whatever the order of the statements, at another place, formatted, and with
+// a node put into a beam.
 func TestRandomModels(t *testing.T) {
 	count := uint64(1000)
 	if testing.Short() {
@@ -223,6 +225,7 @@ func TestRandomModels(t *testing.T) {
 		shuffled := append([]string(nil), r.lines...)
 		r.Shuffle(len(shuffled), func(i, j int) { shuffled[i], shuffled[j] = shuffled[j], shuffled[i] })
 		same(t, a, answered(t, r.text(shuffled)), "another order", text)
+		same(t, a, answered(t, format.File(source.New("/random.span", r.text(r.moved())))), "another place, formatted", text)
 		if split, ok := r.split(); ok {
 			same(t, a, answered(t, r.text(split)), "a node in a beam", text)
 		}
@@ -266,6 +269,17 @@ func superposed(t *testing.T, a *analysis.Results, text string) {
 }
 
 func vectorOf(v [6]float64) []float64 { return v[:] }
+
+// moved puts the whole structure somewhere else.
+func (r *randomModel) moved() []string {
+	lines := append([]string(nil), r.lines...)
+	for i, line := range lines {
+		if strings.HasPrefix(line, "node ") {
+			lines[i] += " + " + r.vector(12, -7, 5) + " m"
+		}
+	}
+	return lines
+}
 
 // split leads a plain beam through a node in its middle.
 func (r *randomModel) split() ([]string, bool) {
