@@ -5,6 +5,7 @@ import (
 	"fmt"
 	"math"
 	"math/rand/v2"
+	"regexp"
 	"strings"
 	"testing"
 
@@ -185,8 +186,13 @@ func movementsOf(r *analysis.Results) (all map[string][6]float64, scale [2]float
 // same holds the movements that two answers have in common against each other.
 func same(t *testing.T, a, b *analysis.Results, what, text string) {
 	t.Helper()
-	x, scale := movementsOf(a)
 	y, _ := movementsOf(b)
+	sameMovements(t, a, y, what, text)
+}
+
+func sameMovements(t *testing.T, a *analysis.Results, y map[string][6]float64, what, text string) {
+	t.Helper()
+	x, scale := movementsOf(a)
 	for name, u := range x {
 		v, both := y[name]
 		if !both {
@@ -200,8 +206,8 @@ func same(t *testing.T, a, b *analysis.Results, what, text string) {
 
 // TestRandomModels holds a thousand random structures to what every right answer
 // has: equilibrium; reciprocity (Betti and Maxwell); superposition; the same
-// answer whatever the order of the statements, at another place, formatted, and with
-// a node put into a beam.
+// answer whatever the order of the statements, the units, the ends of members; at
+// another place, turned about, formatted, and with a node put into a beam.
 func TestRandomModels(t *testing.T) {
 	count := uint64(1000)
 	if testing.Short() {
@@ -226,6 +232,9 @@ func TestRandomModels(t *testing.T) {
 		r.Shuffle(len(shuffled), func(i, j int) { shuffled[i], shuffled[j] = shuffled[j], shuffled[i] })
 		same(t, a, answered(t, r.text(shuffled)), "another order", text)
 		same(t, a, answered(t, format.File(source.New("/random.span", r.text(r.moved())))), "another place, formatted", text)
+		same(t, a, answered(t, r.text(r.swapped())), "swapped ends", text)
+		same(t, a, answered(t, otherUnits.Replace(text)), "other units", text)
+		sameMovements(t, a, turnedBack(answered(t, halfTurn(text))), "half a turn", text)
 		if split, ok := r.split(); ok {
 			same(t, a, answered(t, r.text(split)), "a node in a beam", text)
 		}
@@ -269,6 +278,67 @@ func superposed(t *testing.T, a *analysis.Results, text string) {
 }
 
 func vectorOf(v [6]float64) []float64 { return v[:] }
+
+// otherUnits writes some quantities in other units of the same value.
+var otherUnits = strings.NewReplacer(" kN/m ", " N/mm ", "3 mm down", "0.3 cm down", "2 mm\n", "0.2 cm\n", "120 x 80 x 5 mm", "12 x 8 x 0.5 cm", " kNm about", " kN*m about")
+
+// swapped lets plain beams whose loads do not speak of places or member axes run
+// the other way.
+func (r *randomModel) swapped() []string {
+	lines := append([]string(nil), r.lines...)
+	text := strings.Join(lines, "\n")
+	for _, b := range r.beams {
+		name := fmt.Sprintf("m%d", b[0])
+		if strings.Contains(text, name+" from") || strings.Contains(text, name+" at") {
+			continue
+		}
+		for i, line := range lines {
+			if rest, ok := strings.CutPrefix(line, "beam "+name+" = "); ok && !strings.Contains(rest, "roll") {
+				f := strings.Fields(rest)
+				f[0], f[2] = f[2], f[0]
+				lines[i] = "beam " + name + " = " + strings.Join(f, " ")
+			}
+		}
+	}
+	return lines
+}
+
+var (
+	position = regexp.MustCompile(`\(([-0-9.]+), ([-0-9.]+)(?:, ([-0-9.]+))?\)`)
+	moment   = regexp.MustCompile(`([-0-9.]+) kNm about y`)
+	turned   = regexp.MustCompile(`turned ([-0-9.]+) deg`)
+)
+
+// halfTurn turns a model by 180 degrees about the global z: x and y change sign,
+// as do moments and turns about y. Member axes turn along.
+func halfTurn(text string) string {
+	text = position.ReplaceAllStringFunc(text, func(v string) string {
+		p := position.FindStringSubmatch(v)
+		if p[3] == "" {
+			return "(" + negated(p[1]) + ", " + p[2] + ")"
+		}
+		return "(" + negated(p[1]) + ", " + negated(p[2]) + ", " + p[3] + ")"
+	})
+	text = moment.ReplaceAllStringFunc(text, func(v string) string { return negated(moment.FindStringSubmatch(v)[1]) + " kNm about y" })
+	text = turned.ReplaceAllStringFunc(text, func(v string) string { return "turned " + negated(turned.FindStringSubmatch(v)[1]) + " deg" })
+	return strings.ReplaceAll(text, "along x\n", "along -x\n")
+}
+
+func negated(number string) string {
+	if rest, negative := strings.CutPrefix(number, "-"); negative {
+		return rest
+	}
+	return "-" + number
+}
+
+// turnedBack are the movements of a model turned by halfTurn, turned back.
+func turnedBack(r *analysis.Results) map[string][6]float64 {
+	all, _ := movementsOf(r)
+	for name, u := range all {
+		all[name] = [6]float64{-u[0], -u[1], u[2], -u[3], -u[4], u[5]}
+	}
+	return all
+}
 
 // moved puts the whole structure somewhere else.
 func (r *randomModel) moved() []string {
